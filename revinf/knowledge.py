@@ -11,13 +11,25 @@ import csv
 import gzip
 import io
 import json
+import unicodedata
 from functools import cache
 from pathlib import Path
 from typing import Any
 
 from revinf.exceptions import InputFileError
 
-__all__ = ["demo_folder", "describe_table", "read_table", "shipped_tables", "table_path"]
+__all__ = [
+    "VERSION",
+    "demo_folder",
+    "describe_table",
+    "normalise_term",
+    "read_table",
+    "shipped_tables",
+    "table_path",
+]
+
+VERSION = "0.1.0"
+"""Version of revinf; pyproject.toml reads it here."""
 
 _PACKAGE = Path(__file__).resolve().parent
 
@@ -153,12 +165,33 @@ def read_table(name: str) -> tuple[dict[str, str], ...]:
     return tuple(csv.DictReader(io.StringIO(text)))
 
 
+def normalise_term(text: str) -> str:
+    """Return a term as it is compared: NFC, lower case, underscores and runs of white space as one space.
+
+    Parameters
+    ----------
+    text : str
+        A term as somebody wrote it.
+
+    Returns
+    -------
+    str
+        The spelling under which it is stored and looked up.
+
+    Examples
+    --------
+    >>> normalise_term("  Theory_of  MIND ")
+    'theory of mind'
+    """
+    composed = unicodedata.normalize("NFC", text).lower().replace("_", " ")
+    # Lower-casing can decompose a letter, so compose once more.
+    return unicodedata.normalize("NFC", " ".join(composed.split()))
+
+
 @cache
 def _package() -> dict[str, Any]:
     """Return the parsed datapackage.json."""
-    content: dict[str, Any] = json.loads(
-        (shipped_tables() / "datapackage.json").read_text(encoding="utf-8")
-    )
+    content: dict[str, Any] = json.loads((shipped_tables() / "datapackage.json").read_text(encoding="utf-8"))
     return content
 
 

@@ -1,0 +1,112 @@
+"""Keeps account of what an import read, kept, refused and noticed; nothing is dropped without a line."""
+
+from __future__ import annotations
+
+import csv
+from collections import Counter
+from collections.abc import Iterable
+from dataclasses import dataclass, field
+from pathlib import Path
+from typing import Any
+
+__all__ = ["ImportReport", "Notice"]
+
+_HEADER = ("file", "line", "reason", "row")
+_SHOWN_LINES = 5
+
+
+@dataclass(frozen=True, slots=True)
+class Notice:
+    """Something a careful person would want to know of the files, though rows were kept.
+
+    Parameters
+    ----------
+    code : str
+        Stable name, such as ``"duplicate-rows"``.
+    message : str
+        One sentence with the count.
+    lines : tuple of int
+        The first few lines concerned.
+    """
+
+    code: str
+    message: str
+    lines: tuple[int, ...] = ()
+
+
+@dataclass(slots=True)
+class ImportReport:
+    """Rows read, kept and refused by file, the refused rows themselves, and the notices.
+
+    Examples
+    --------
+    >>> report = ImportReport()
+    >>> report.refuse("peaks.csv", [(7, "x is not a number", "a,?,2,3")])
+    >>> report.by_reason()
+    [('peaks.csv', 'x is not a number', 1, (7,))]
+    """
+
+    read: Counter[str] = field(default_factory=Counter)
+    kept: Counter[str] = field(default_factory=Counter)
+    left_out: Counter[str] = field(default_factory=Counter)
+    refused: list[tuple[str, int, str, str]] = field(default_factory=list)
+    notices: list[Notice] = field(default_factory=list)
+
+    def refuse(self, file: str, rows: Iterable[tuple[int, str, str]]) -> None:
+        """Record refused rows as (line, reason, the row's text)."""
+        self.refused.extend((file, line, reason, text) for line, reason, text in rows)
+
+    def notice(self, code: str, message: str, lines: Iterable[int] = ()) -> None:
+        """Record something noticed."""
+        self.notices.append(Notice(code, message, tuple(lines)[:_SHOWN_LINES]))
+
+    def by_reason(self) -> list[tuple[str, str, int, tuple[int, ...]]]:
+        """Return (file, reason, number of rows, first lines), in order of appearance."""
+        groups: dict[tuple[str, str], list[int]] = {}
+        for file, line, reason, _ in self.refused:
+            groups.setdefault((file, reason), []).append(line)
+        return [
+            (file, reason, len(lines), tuple(lines[:_SHOWN_LINES]))
+            for (file, reason), lines in groups.items()
+        ]
+
+    def write_refused(self, path: Path) -> bool:
+        """Write the refused rows beside the output; remove an old list of ours when there are none.
+
+        Parameters
+        ----------
+        path : pathlib.Path
+            Target, replaced as a whole.
+
+        Returns
+        -------
+        bool
+            Whether there was anything to write.
+        """
+        if not self.refused:
+            if path.is_file() and path.read_bytes()[:64].startswith(",".join(_HEADER).encode()):
+                path.unlink()
+            return False
+        beside = path.with_name(f".{path.name}.part")
+        with beside.open("w", encoding="utf-8", newline="") as stream:
+            writer = csv.writer(stream, lineterminator="\n")
+            writer.writerow(_HEADER)
+            writer.writerows(self.refused)
+        beside.replace(path)
+        return True
+
+    def to_dict(self) -> dict[str, Any]:
+        """Return the account as the manifest keeps it (refused rows by reason only)."""
+        return {
+            "read": dict(self.read),
+            "kept": dict(self.kept),
+            "studies_left_out": dict(self.left_out),
+            "refused": [
+                {"file": file, "reason": reason, "rows": rows, "first_lines": list(lines)}
+                for file, reason, rows, lines in self.by_reason()
+            ],
+            "notices": [
+                {"code": item.code, "message": item.message, "first_lines": list(item.lines)}
+                for item in self.notices
+            ],
+        }

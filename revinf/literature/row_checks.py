@@ -1,0 +1,90 @@
+"""The pieces that every reader of rows needs: refusing rows with a reason, numbering names, groups."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from revinf.literature.rows import LINE
+
+if TYPE_CHECKING:
+    import pandas as pd
+
+__all__ = ["Numbering", "RowChecks", "filled_groups", "numbers"]
+
+
+class RowChecks:
+    """Which rows of a block are fine, and the first reason why each other one is not."""
+
+    def __init__(self, block: pd.DataFrame) -> None:
+        self.block = block
+        self.fine: NDArray[np.bool_] = np.ones(len(block), dtype=bool)
+        self._reasons: dict[int, str] = {}
+
+    def refuse(self, rows: Any, reason: str) -> None:
+        """Refuse the rows of a boolean mask; a row keeps its first reason."""
+        fresh = np.asarray(rows, dtype=bool) & self.fine
+        if fresh.any():
+            self._reasons.update(dict.fromkeys(np.flatnonzero(fresh).tolist(), reason))
+            self.fine &= ~fresh
+
+    def leave_out(self, rows: Any) -> int:
+        """Leave rows out that are not at fault; return how many."""
+        fresh = np.asarray(rows, dtype=bool) & self.fine
+        self.fine &= ~fresh
+        return int(fresh.sum())
+
+    def refused_rows(self, delimiter: str) -> Iterator[tuple[int, str, str]]:
+        """Yield line, reason and text of the refused rows, in order."""
+        cells = self.block.drop(columns=LINE)
+        for row in sorted(self._reasons):
+            text = delimiter.join(str(cell) for cell in cells.iloc[row])
+            yield int(self.block[LINE].iloc[row]), self._reasons[row], text
+
+
+class Numbering:
+    """Gives each distinct name a number, in order of appearance over all blocks.
+
+    Examples
+    --------
+    >>> import pandas as pd
+    >>> numbering = Numbering()
+    >>> numbering.codes(pd.Series(["b", "a", "b"])).tolist(), numbering.names
+    ([0, 1, 0], ['b', 'a'])
+    """
+
+    def __init__(self) -> None:
+        self._index: dict[str, int] = {}
+
+    @property
+    def names(self) -> list[str]:
+        """The names in order of their numbers."""
+        return list(self._index)
+
+    def codes(self, names: pd.Series[str]) -> NDArray[np.int32]:
+        """Return the number of each name, adding the new ones."""
+        import pandas as pd
+
+        local, uniques = pd.factorize(names)
+        index = self._index
+        known = [index.setdefault(str(name), len(index)) for name in uniques]
+        return np.asarray(known, dtype=np.int32)[local] if len(known) else np.zeros(0, dtype=np.int32)
+
+
+def numbers(text: pd.Series[str]) -> NDArray[np.float64]:
+    """Return the cells as numbers; NaN where a cell is not one."""
+    import pandas as pd
+
+    return np.asarray(pd.to_numeric(text, errors="coerce"), dtype=np.float64)
+
+
+def filled_groups(block: pd.DataFrame, column: str) -> dict[str, str]:
+    """Return the group of each study of a block, where the column exists and is filled."""
+    if column not in block.columns:
+        return {}
+    pairs = block[["study", column]].drop_duplicates()
+    groups = zip(pairs["study"].str.strip(), pairs[column].str.strip(), strict=True)
+    return {study: group for study, group in groups if study and group}

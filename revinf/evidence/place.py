@@ -1,0 +1,69 @@
+"""Where a claim's region is, as an assessment says it."""
+
+from __future__ import annotations
+
+from revinf.evidence.assessment import Nearest, Place, TablePlace
+from revinf.evidence.claim import Point
+from revinf.spaces.brain import (
+    BrainReference,
+    distance_outside_mm,
+    hemisphere,
+    nearest_label,
+    place_in_words,
+    tissue_at,
+)
+from revinf.spaces.regions import Mask
+
+__all__ = ["place_of_mask", "place_of_peak"]
+
+
+def place_of_peak(brain: BrainReference, peak: Point, table_region: TablePlace | None = None) -> Place:
+    """Return side, tissue and nearest published label of a peak.
+
+    Parameters
+    ----------
+    brain : BrainReference
+        Tissue image and labelled points.
+    peak : (x, y, z), mm, MNI152
+        The peak.
+    table_region : TablePlace, optional
+        The region of a table that answers for it.
+
+    Returns
+    -------
+    Place
+        In words and parts.
+    """
+    label = nearest_label(brain, peak)
+    return Place(
+        hemisphere=hemisphere(peak),
+        tissue=tissue_at(brain, peak),
+        nearest=None
+        if label is None
+        else Nearest(label=label.label, distance_mm=label.distance_mm, source=label.source),
+        words=place_in_words(brain, peak),
+        outside_mm=distance_outside_mm(brain, peak),
+        table_region=table_region,
+    )
+
+
+def place_of_mask(mask: Mask) -> Place:
+    """Return what can be said of a mask: its name and its centre of gravity, which may lie outside it.
+
+    Parameters
+    ----------
+    mask : Mask
+        The region.
+
+    Returns
+    -------
+    Place
+        In words; tissue and nearest label are left out, since a mask is no point.
+    """
+    x, y, z = mask.centre_mm
+    return Place(
+        hemisphere=hemisphere(mask.centre_mm),
+        tissue=None,
+        nearest=None,
+        words=f"mask {mask.name}, {int(mask.ijk_inside.sum())} voxels, centre of gravity ({x:.0f}, {y:.0f}, {z:.0f})",
+    )

@@ -98,6 +98,14 @@ class BaseRateTable:
         """The terms of all regions, sorted."""
         return sorted({row.term for rows in self._rows.values() for row in rows})
 
+    def term_totals(self) -> dict[str, int]:
+        """Return the largest number of studies behind each term, by term, sorted."""
+        totals: dict[str, int] = {}
+        for rows in self._rows.values():
+            for row in rows:
+                totals[row.term] = max(totals.get(row.term, 0), row.term_total)
+        return dict(sorted(totals.items()))
+
     @property
     def n_studies(self) -> int:
         """The largest number of studies behind any row."""

@@ -8,7 +8,7 @@ from pathlib import Path
 
 from revinf.base_rates.counting import count_terms
 from revinf.base_rates.table_rows import TableRow
-from revinf.exceptions import InputFileError, SpaceError
+from revinf.exceptions import InputFileError, InvalidClaimError, SpaceError
 from revinf.literature.literature import Literature
 from revinf.literature.rows import LINE, open_delimited
 from revinf.spaces.brain import grey_lattice
@@ -16,7 +16,7 @@ from revinf.spaces.coordinates import normalise_space
 from revinf.spaces.spheres import Sphere, sphere
 from revinf.spaces.transforms import talairach_to_mni
 
-__all__ = ["NamedSphere", "lattice_places", "listed_places", "tabulate"]
+__all__ = ["NamedSphere", "chosen_places", "lattice_places", "listed_places", "tabulate"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -54,6 +54,47 @@ def lattice_places(literature: Literature, spacing_mm: float, radius_mm: float) 
         name = " ".join(f"{value / 10:g}" for value in row)
         places.append(NamedSphere(name, Sphere(centre_tenths=(row[0], row[1], row[2]), radius_mm=radius_mm)))
     return places
+
+
+def chosen_places(
+    literature: Literature,
+    spacing_mm: float | None,
+    listed: Path | None,
+    radius_mm: float,
+    *,
+    rename: dict[str, str] | None = None,
+    transform: str = "pooled",
+) -> list[NamedSphere]:
+    """Return the places of a lattice or of a list, whichever was named.
+
+    Parameters
+    ----------
+    literature : Literature
+        Carries the grey matter.
+    spacing_mm : float or None, mm
+        Spacing of the lattice.
+    listed : pathlib.Path or None
+        A list of places.
+    radius_mm : float, mm
+        Radius of every sphere, but for rows of a list that give their own.
+    rename, transform
+        As for `listed_places`.
+
+    Returns
+    -------
+    list of NamedSphere
+        At least one.
+
+    Raises
+    ------
+    InvalidClaimError
+        If not exactly one of lattice and list is named.
+    """
+    if (spacing_mm is None) == (listed is None):
+        raise InvalidClaimError("places come from one source; give either --lattice MM or --regions FILE")
+    if listed is not None:
+        return listed_places(listed, radius_mm, rename=rename, transform=transform)
+    return lattice_places(literature, float(spacing_mm or 0), radius_mm)
 
 
 def listed_places(

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, field, replace
+from pathlib import Path
 
 from revinf.base_rates.counting import TermCounts
 from revinf.base_rates.table import BaseRateTable
@@ -20,16 +21,16 @@ from revinf.evidence.cautions.thresholds import Thresholds
 from revinf.evidence.claim import Claim
 from revinf.evidence.grading import direction_of, grade_of, headline_grade
 from revinf.evidence.sources import Answer, LiteratureSource, Source, TableSource
-from revinf.evidence.vocabulary import Vocabulary, shipped_vocabulary
+from revinf.evidence.vocabulary import Vocabulary, chosen_vocabulary, shipped_vocabulary
 from revinf.exceptions import InvalidClaimError, UnknownTermError
 from revinf.literature.literature import Literature, unknown_term
 from revinf.stats.association import benjamini_hochberg, fisher_p
 from revinf.stats.bayes import observed_posterior, posterior_estimate, prevalence, required_prior
-from revinf.stats.estimates import Counts, Estimate
+from revinf.stats.estimates import Counts, Estimate, check_level
 from revinf.stats.rates import jeffreys_rates
 from revinf.stats.ratio import DEFAULT_LIMIT, RatioPrior, likelihood_ratio, observed_ratio
 
-__all__ = ["TARGETS", "Choices", "assess"]
+__all__ = ["TARGETS", "Choices", "assess", "choices_of"]
 
 TARGETS = (0.80, 0.95)
 """Posteriors for which the required prior is told."""
@@ -58,6 +59,51 @@ class Choices:
     ratio_limit: float = DEFAULT_LIMIT
     vocabulary: Vocabulary | None = None
     thresholds: Thresholds = field(default_factory=Thresholds)
+
+
+def choices_of(
+    *, level: float, ratio_prior: str, ratio_limit: float, kinds: str | Path | None = None
+) -> Choices:
+    """Return choices as somebody typed them, checked.
+
+    Parameters
+    ----------
+    level : float, probability
+        Posterior probability that each interval holds.
+    ratio_prior : str
+        "shared" or "independent".
+    ratio_limit : float, ratio > 1
+        Limit of the shared prior.
+    kinds : path, optional
+        A table of kinds, domains and synonyms.
+
+    Returns
+    -------
+    Choices
+        Checked.
+
+    Raises
+    ------
+    InvalidClaimError
+        If the prior's name is unknown.
+    InputFileError
+        If the table of kinds cannot be used.
+
+    Examples
+    --------
+    >>> choices_of(level=0.9, ratio_prior="shared", ratio_limit=20).level
+    0.9
+    """
+    if ratio_prior not in ("shared", "independent"):
+        raise InvalidClaimError(
+            f"ratio prior must be shared or independent, but got {ratio_prior!r}; use shared"
+        )
+    return Choices(
+        level=check_level(level),
+        ratio_prior="shared" if ratio_prior == "shared" else "independent",
+        ratio_limit=ratio_limit,
+        vocabulary=chosen_vocabulary(kinds),
+    )
 
 
 def assess(

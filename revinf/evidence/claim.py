@@ -7,14 +7,14 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Literal
 
-from revinf.exceptions import InvalidClaimError, SpaceError
+from revinf.exceptions import InvalidClaimError, InvalidProbabilityError, SpaceError
 from revinf.knowledge import normalise_term
 from revinf.spaces.coordinates import normalise_space, round_mm
 from revinf.spaces.spheres import Sphere, sphere
 from revinf.spaces.transforms import talairach_to_mni
 from revinf.stats.estimates import check_probability
 
-__all__ = ["DEFAULT_PRIOR", "DEFAULT_RADIUS_MM", "Claim", "Point"]
+__all__ = ["DEFAULT_PRIOR", "DEFAULT_RADIUS_MM", "Claim", "Point", "parsed_prior"]
 
 Point = tuple[float, float, float]
 
@@ -122,3 +122,37 @@ class Claim:
     def sphere_at(self, point: Sequence[float]) -> Sphere:
         """Return the claim's sphere around a point in mm, MNI152."""
         return sphere(point, self.radius_mm)
+
+
+def parsed_prior(text: str) -> float | Literal["prevalence"]:
+    """Return a prior as somebody typed it: a probability, or the word prevalence.
+
+    Parameters
+    ----------
+    text : str
+        What was typed.
+
+    Returns
+    -------
+    float or "prevalence"
+        Its range is checked by the claim.
+
+    Raises
+    ------
+    InvalidProbabilityError
+        If it is neither a number nor the word.
+
+    Examples
+    --------
+    >>> parsed_prior("0.3"), parsed_prior(" Prevalence ")
+    (0.3, 'prevalence')
+    """
+    word = text.strip().lower()
+    if word == "prevalence":
+        return "prevalence"
+    try:
+        return float(word)
+    except ValueError:
+        raise InvalidProbabilityError(
+            f"prior must be a probability or the word prevalence, but got {text!r}; use 0.5 for even odds"
+        ) from None

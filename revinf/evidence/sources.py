@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Protocol
@@ -12,11 +13,15 @@ from revinf.evidence.assessment import LiteratureFacts, Place, TablePlace
 from revinf.evidence.claim import Claim
 from revinf.evidence.place import place_of_mask, place_of_peak
 from revinf.exceptions import InvalidClaimError
+from revinf.knowledge import table_path
 from revinf.literature.literature import Literature
 from revinf.spaces.reference import brain_reference
 from revinf.spaces.regions import load_mask
 
-__all__ = ["Answer", "LiteratureSource", "Source", "TableSource"]
+__all__ = ["ENVIRONMENT", "Answer", "LiteratureSource", "Source", "TableSource", "choose_source"]
+
+ENVIRONMENT = "REVINF_LITERATURE"
+"""Environment variable that names the literature to use where none is given."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -146,3 +151,45 @@ class TableSource:
             region_kind="table",
             radius_mm=region.radius_mm,
         )
+
+
+def choose_source(
+    literature: str | Path | None,
+    table: str | Path | None,
+    environment: Mapping[str, str],
+) -> Source:
+    """Return the source that the user named, else the environment's, else the shipped open base rates.
+
+    Parameters
+    ----------
+    literature, table : path, optional
+        At most one of a literature folder and a base-rate table.
+    environment : mapping
+        Environment variables; REVINF_LITERATURE names a literature folder.
+
+    Returns
+    -------
+    Source
+        Opened.
+
+    Raises
+    ------
+    InvalidClaimError
+        If both a literature and a table are named.
+    LiteratureError, InputFileError
+        If it cannot be read.
+
+    Examples
+    --------
+    >>> choose_source(None, None, {}).facts.name
+    'open base rates'
+    """
+    if literature is not None and table is not None:
+        raise InvalidClaimError("counts come from one source; give --literature or --table, not both")
+    if table is not None:
+        return TableSource(BaseRateTable.read(table))
+    folder = literature or environment.get(ENVIRONMENT)
+    if folder:
+        return LiteratureSource(Literature.open(folder))
+    shipped = BaseRateTable.read(table_path("open_base_rates"), name="open base rates")
+    return TableSource(shipped, study_is="experiments", shipped=True)

@@ -39,8 +39,8 @@ def verdict(
         sentence = f"In this literature, activity here does not tell studies of {term!r} from the others"
     elif direction == "against":
         sentence = (
-            f"In this literature, activity here is rarer in studies of {term!r} than in the others: it speaks "
-            f"against the claim ({grade_words(str(headline_grade))})"
+            f"In this literature, activity here is rarer in studies of {term!r} than in the others: it "
+            f"speaks against the claim ({grade_words(str(headline_grade))})"
         )
     else:
         sentence = (

@@ -13,7 +13,7 @@ from typing import Literal
 from revinf.exceptions import InputFileError
 from revinf.knowledge import normalise_term, read_table
 
-__all__ = ["Kind", "Vocabulary", "shipped_vocabulary"]
+__all__ = ["Kind", "Vocabulary", "chosen_vocabulary", "shipped_vocabulary"]
 
 Kind = Literal["process", "not a process", "unknown"]
 
@@ -149,3 +149,29 @@ def shipped_vocabulary() -> Vocabulary:
         [(row["term"], row["domain"], row["synonyms"]) for row in read_table("processes")],
         {row["term"]: row["kind"] for row in read_table("term_kinds")},
     )
+
+
+def chosen_vocabulary(path: str | Path | None) -> Vocabulary:
+    """Return the user's own vocabulary where a file is named, else the shipped one.
+
+    Parameters
+    ----------
+    path : path, optional
+        As for `Vocabulary.read`.
+
+    Returns
+    -------
+    Vocabulary
+        Read.
+
+    Raises
+    ------
+    InputFileError
+        If the file cannot be used.
+
+    Examples
+    --------
+    >>> chosen_vocabulary(None) is shipped_vocabulary()
+    True
+    """
+    return shipped_vocabulary() if path is None else Vocabulary.read(path)

@@ -50,7 +50,8 @@ def build_literature(
     Raises
     ------
     InputFileError
-        If a file cannot be used, or the target cannot be written.
+        If a file cannot be used, or the target or `refused.csv` beside it is not ours to replace or
+        cannot be written.
     """
     target = Path(out)
     studies, report = import_studies(options, progress)
@@ -83,6 +84,7 @@ def build_literature(
         },
         report=report.to_dict(),
     )
+    report.check_target(target.parent / REFUSED)
     tell("writing", 0)
     write_folder(target, arrays, manifest)
     report.write_refused(target.parent / REFUSED)

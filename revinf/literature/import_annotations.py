@@ -12,7 +12,7 @@ from revinf.exceptions import InputFileError
 from revinf.knowledge import normalise_term
 from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.refusals import ImportReport
-from revinf.literature.row_checks import Numbering, RowChecks, filled_groups, numbers
+from revinf.literature.row_checks import Numbering, RowChecks, numbers, record_groups
 from revinf.literature.rows import LINE, DelimitedFile, open_delimited
 
 if TYPE_CHECKING:
@@ -96,6 +96,12 @@ class _LabelReader:
                 path=table.path,
                 row=1,
             )
+        if not self.long and not all(normalise_term(name) for name in self.wide):
+            raise InputFileError(
+                "a column has no name, so its numbers label nothing; name it after its term or remove it",
+                path=table.path,
+                row=1,
+            )
         if self.long and options.min_weight is not None:
             table.require("weight")
         self.study_numbering, self.term_numbering = Numbering(), Numbering()
@@ -113,7 +119,7 @@ class _LabelReader:
         (self._take_long if self.long else self._take_wide)(block, checks)
         self.report.refuse(name, checks.refused_rows(self.table.delimiter))
         self.report.kept[name] += int(checks.fine.sum())
-        self.group.update(filled_groups(block[checks.fine], self.group_column))
+        record_groups(self.group, block[checks.fine], self.group_column, self.table.path)
 
     def _take_long(self, block: pd.DataFrame, checks: RowChecks) -> None:
         """Take rows of study, term, weight."""
@@ -142,7 +148,7 @@ class _LabelReader:
             text = block[column].str.strip()
             value = numbers(text)
             checks.refuse(~np.isfinite(value) & (text != ""), f"column {column!r} is not a number")
-            weights[:, position] = np.nan_to_num(value, nan=0.0, posinf=0.0, neginf=0.0)
+            weights[:, position] = value  # NaN for an empty cell: it is above no minimum, not even 0
         row, column_index = np.nonzero(self._heavy(weights) & checks.fine[:, None])
         study = self.study_numbering.codes(block["study"].str.strip().iloc[row])
         terms = self._normalised(pd.Series(self.wide, dtype=str))

@@ -4,10 +4,17 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, field
+from math import isfinite
 from pathlib import Path
-from typing import Literal
+from typing import Any, Literal, cast
 
-__all__ = ["ImportOptions", "Progress"]
+from revinf.exceptions import InvalidClaimError
+from revinf.spaces.transforms import TRANSFORMS
+
+__all__ = ["SIGNS", "ImportOptions", "Progress", "Sign", "import_options"]
+
+Sign = Literal["all", "positive", "negative"]
+SIGNS: tuple[str, ...] = ("all", "positive", "negative")
 
 Progress = Callable[[str, int], None]
 """Called with what is being done and how many rows are through."""
@@ -44,8 +51,43 @@ class ImportOptions:
     studies: Path | None = None
     rename: dict[str, str] = field(default_factory=dict)
     group: str | None = None
-    sign: Literal["all", "positive", "negative"] = "all"
+    sign: Sign = "all"
     min_weight: float | None = None
     space: str | None = None
     transform: str = "pooled"
     keep_empty: bool = False
+
+
+def import_options(*, sign: str = "all", **rest: Any) -> ImportOptions:
+    """Return import options as somebody typed them, checked.
+
+    Parameters
+    ----------
+    sign : str
+        "all", "positive" or "negative".
+    **rest
+        As for `ImportOptions`.
+
+    Returns
+    -------
+    ImportOptions
+        Checked.
+
+    Raises
+    ------
+    InvalidClaimError
+        If a word is not one of those allowed, or the weight is not a number.
+
+    Examples
+    --------
+    >>> import_options(peaks=Path("p.csv"), annotations=Path("a.csv"), sign="positive").sign
+    'positive'
+    """
+    transform = rest.get("transform", "pooled")
+    for name, value, known in (("sign", sign, SIGNS), ("transform", transform, TRANSFORMS)):
+        if value not in known:
+            raise InvalidClaimError(f"{name} must be one of {', '.join(known)}, but got {value!r}")
+    weight = rest.get("min_weight")
+    if weight is not None and not isfinite(weight):
+        raise InvalidClaimError(f"the smallest weight must be a number, but got {weight!r}; use 0.001")
+    return ImportOptions(sign=cast("Sign", sign), **rest)

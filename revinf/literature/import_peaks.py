@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from revinf.exceptions import SpaceError
 from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.refusals import ImportReport
-from revinf.literature.row_checks import Numbering, RowChecks, filled_groups, numbers
+from revinf.literature.row_checks import MINUS, Numbering, RowChecks, numbers, record_groups
 from revinf.literature.rows import LINE, DelimitedFile, open_delimited
 from revinf.spaces.coordinates import normalise_space, to_tenths
 from revinf.spaces.transforms import talairach_to_mni
@@ -73,12 +73,13 @@ def read_peaks(options: ImportOptions, group_column: str, report: ImportReport, 
     InputFileError
         If a column is missing, or the sign is asked for and there is no `stat` column.
     SpaceError
-        If `options.space` is not a known space.
+        If `options.space` is not a known space, or `options.transform` not a known transform.
     """
     table = open_delimited(options.peaks, options.rename)
     table.require("study", *_AXES, *(("stat",) if options.sign != "all" else ()))
     if options.space is not None:
         normalise_space(options.space)
+    talairach_to_mni((0.0, 0.0, 0.0), options.transform)  # an unknown name fails before any row is read
     reader = _PeakReader(options, table, group_column, report)
     for block in table.blocks():
         reader.take(block)
@@ -110,38 +111,35 @@ class _PeakReader:
         study = block["study"].str.strip()
         checks.refuse(study == "", "empty study id")
         xyz = np.column_stack([self._axis(block, axis, checks) for axis in _AXES])
-        for axis, (low, high) in enumerate(HEAD_MM):
-            outside = (xyz[:, axis] < low) | (xyz[:, axis] > high)
-            checks.refuse(outside, f"{_AXES[axis]} lies outside any head ({low:g} to {high:g} mm)")
+        _refuse_outside(xyz, checks, "")
         talairach = self._talairach(block, checks)
         if self.options.sign != "all":
             self._select_sign(block, checks)
-        fine = checks.fine
+        self.any_negative |= bool((xyz[checks.fine] < 0).any())
+        moved = talairach & checks.fine
+        if moved.any():
+            xyz[moved] = talairach_to_mni(xyz[moved], self.options.transform)
+            # A Talairach brain is the smaller one: what fits into it can come to lie outside.
+            _refuse_outside(xyz, checks, " after the transform to MNI152")
         self.report.refuse(name, checks.refused_rows(self.table.delimiter))
-        xyz, talairach = xyz[fine], talairach[fine]
-        self.any_negative |= bool((xyz < 0).any())
-        if talairach.any():
-            xyz[talairach] = talairach_to_mni(xyz[talairach], self.options.transform)
-            self.counts["talairach"] += int(talairach.sum())
+        fine = checks.fine
+        self.counts["talairach"] += int((moved & fine).sum())
         if "stat" in block.columns:
             self.counts["negative_stat"] += int((numbers(block["stat"][fine]) < 0).sum())
-        self.tenths.append(to_tenths(xyz).astype(np.int16))
+        self.tenths.append(to_tenths(xyz[fine]).astype(np.int16))
         self.studies.append(self.numbering.codes(study[fine]))
         self.lines.append(block[LINE].to_numpy()[fine])
         self.report.kept[name] += int(fine.sum())
-        self.group.update(filled_groups(block[fine], self.group_column))
+        record_groups(self.group, block[fine], self.group_column, self.table.path)
 
     def _axis(self, block: pd.DataFrame, axis: str, checks: RowChecks) -> NDArray[np.float64]:
         """Return one coordinate in mm; refuse the rows where it is not a finite number."""
         text = block[axis].str.strip()
-        minus = text.str.startswith("\N{MINUS SIGN}")
-        if minus.any():
-            self.counts["minus"] += int(minus.sum())
-            text = text.str.replace("\N{MINUS SIGN}", "-", regex=False)
+        self.counts["minus"] += int(text.str.startswith(MINUS).sum())
         value = numbers(text)
         missing = ~np.isfinite(value)
         if missing.any():
-            comma = text.str.fullmatch(r"[-+]?\d+,\d+").to_numpy(dtype=bool)
+            comma = text.str.fullmatch(rf"[-+{MINUS}]?\d+,\d+").to_numpy(dtype=bool)
             checks.refuse(text == "", f"{axis} is empty")
             checks.refuse(comma, f"{axis} has a decimal comma; write a decimal point")
             checks.refuse(missing, f"{axis} is not a finite number")
@@ -215,6 +213,13 @@ class _PeakReader:
             )
         if counts["other_sign"]:
             notice("sign", f"{name}: {counts['other_sign']} peaks of the other sign left out as asked")
+
+
+def _refuse_outside(xyz: NDArray[np.float64], checks: RowChecks, when: str) -> None:
+    """Refuse the rows that no head reaches."""
+    for axis, (low, high) in enumerate(HEAD_MM):
+        outside = (xyz[:, axis] < low) | (xyz[:, axis] > high)
+        checks.refuse(outside, f"{_AXES[axis]} lies outside any head{when} ({low:g} to {high:g} mm)")
 
 
 def _repeated(study: NDArray[np.int32], tenths: NDArray[np.int16]) -> NDArray[np.bool_]:

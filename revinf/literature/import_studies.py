@@ -6,7 +6,7 @@ from dataclasses import dataclass, field
 from pathlib import Path
 
 from revinf.literature.refusals import ImportReport
-from revinf.literature.row_checks import RowChecks, filled_groups
+from revinf.literature.row_checks import RowChecks, record_groups
 from revinf.literature.rows import LINE, open_delimited
 
 __all__ = ["StudyRows", "read_studies"]
@@ -14,10 +14,10 @@ __all__ = ["StudyRows", "read_studies"]
 
 @dataclass(slots=True, kw_only=True)
 class StudyRows:
-    """Group and DOI by study id, where they are given."""
+    """Group and DOIs by study id, where they are given."""
 
     group: dict[str, str] = field(default_factory=dict)
-    doi: dict[str, str] = field(default_factory=dict)
+    doi: dict[str, set[str]] = field(default_factory=dict)
 
 
 def read_studies(
@@ -60,18 +60,22 @@ def read_studies(
         checks.refuse(study == "", "empty study id")
         report.refuse(table.path.name, checks.refused_rows(table.delimiter))
         report.kept[table.path.name] += int(checks.fine.sum())
-        result.group.update(filled_groups(block[checks.fine], group_column))
-        result.doi.update(filled_groups(block[checks.fine], "doi"))
-        for name, line in zip(study[checks.fine], block[LINE][checks.fine], strict=True):
+        record_groups(result.group, block[checks.fine], group_column, table.path)
+        dois = block["doi"].str.strip() if "doi" in block.columns else study.where(False, "")
+        for name, doi, line in zip(
+            study[checks.fine], dois[checks.fine], block[LINE][checks.fine], strict=True
+        ):
             if name in seen:
                 repeated.append(int(line))
             seen.add(name)
+            if doi:
+                result.doi.setdefault(name, set()).add(doi)
     if table.has_bom:
         report.notice("byte-order-mark", f"{table.path.name} starts with a byte-order mark; it was skipped")
     if repeated:
         report.notice(
             "duplicate-rows",
-            f"{table.path.name}: {len(repeated)} studies stand in more than one row; the last row counts",
+            f"{table.path.name}: {len(repeated)} rows name a study again; all its DOIs are kept",
             repeated,
         )
     return result

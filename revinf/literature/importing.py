@@ -33,7 +33,7 @@ class ImportedStudies:
     group_ids : list of str, length S
         Group of each study, empty where none is given.
     dois : list of str, length S
-        DOI of each study, empty where none is given.
+        DOI of each study, empty where none is given; several are joined by "; ".
     peak_study : (P,) int32 array
         Index of the study of each peak.
     peak_tenths : (P, 3) int16 array, tenths of a millimetre, MNI152
@@ -102,8 +102,17 @@ def import_studies(
     labels = read_annotations(options, group_column, report, tell)
     group_of = _groups(options, studies.group, peaks.group, labels.group)
     imported = _assemble(options, peaks, labels, group_of, report)
-    dois = [studies.doi.get(study, "") for study in imported.study_ids]
-    return replace(imported, dois=dois), report
+    dois = _dois_of_units(studies.doi, group_of if imported.merged else {})
+    joined = ["; ".join(sorted(dois.get(study, ()))) for study in imported.study_ids]
+    return replace(imported, dois=joined), report
+
+
+def _dois_of_units(dois: dict[str, set[str]], group_of: dict[str, str]) -> dict[str, set[str]]:
+    """Return the DOIs of each unit of counting: those of all the studies merged into it."""
+    of_unit: dict[str, set[str]] = {}
+    for study, found in dois.items():
+        of_unit.setdefault(group_of.get(study, study), set()).update(found)
+    return of_unit
 
 
 def _groups(options: ImportOptions, *sources: dict[str, str]) -> dict[str, str]:
@@ -143,9 +152,12 @@ def _assemble(
     with_peaks, with_terms = set(peak_units), set(label_units)
     counted = sorted(with_terms if options.keep_empty else with_peaks & with_terms)
     _notice_uncounted(options, with_peaks, with_terms, report)
+    if merged:
+        _notice_ungrouped({*peaks.study_ids, *labels.study_ids} - set(group_of), group_of, report)
     if not counted:
         raise InputFileError(
-            "no study has both a peak and a term; check that the two files use the same study ids",
+            f"no study has both a peak and a term{_refusals_in_words(report)}; check that the two files use "
+            "the same study ids",
             path=options.annotations,
         )
     position = {study: i for i, study in enumerate(counted)}
@@ -188,6 +200,32 @@ def _sorted_pairs(
         (packed % len(terms)).astype(np.int32),
         terms,
     )
+
+
+def _refusals_in_words(report: ImportReport) -> str:
+    """Return how many rows were refused and the commonest reason, in brackets; empty if none."""
+    if not report.refused:
+        return ""
+    _, reason, rows, lines = max(report.by_reason(), key=lambda item: item[2])
+    return (
+        f" ({len(report.refused)} rows were refused; the commonest reason, {rows} times, first in line "
+        f"{lines[0]}: {reason})"
+    )
+
+
+def _notice_ungrouped(ungrouped: set[str], group_of: dict[str, str], report: ImportReport) -> None:
+    """Say which studies no group takes in, where groups are merged."""
+    if ungrouped:
+        report.notice(
+            "ungrouped", f"{len(ungrouped)} studies have no group; each is merged with nothing but itself"
+        )
+    shared = sorted(ungrouped & set(group_of.values()))
+    if shared:
+        report.notice(
+            "group-named-like-study",
+            f"{len(shared)} studies without a group have the name of a group and were merged into it, such "
+            f"as {shared[0]!r}",
+        )
 
 
 def _notice_uncounted(

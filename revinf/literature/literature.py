@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect_left
 from collections.abc import Sequence
 from difflib import get_close_matches
 from functools import cached_property
@@ -149,7 +150,7 @@ class Literature:
             If no counted study carries it; names the terms that look like it.
         """
         name = normalise_term(term)
-        position = int(np.searchsorted(self.terms, name)) if self.terms else 0
+        position = bisect_left(self.terms, name)
         if position < len(self.terms) and self.terms[position] == name:
             return position
         raise unknown_term(name, self.terms, f"the literature {self.description.name!r}")

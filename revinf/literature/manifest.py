@@ -64,8 +64,15 @@ class Manifest:
 
     @property
     def fingerprint(self) -> str:
-        """Sixteen hexadecimal digits that name the content: the same arrays give the same digits."""
-        content = "\n".join(f"{name} {entry.sha256}" for name, entry in sorted(self.arrays.items()))
+        """Sixteen hexadecimal digits that name the content: the same studies give the same digits.
+
+        The stored brain is left out: another nilearn does not make another literature.
+        """
+        content = "\n".join(
+            f"{name} {entry.sha256}"
+            for name, entry in sorted(self.arrays.items())
+            if not name.startswith(("brain_", "point_"))
+        )
         return hashlib.sha256(f"{FORMAT}\n{content}".encode()).hexdigest()[:16]
 
     def to_json(self) -> str:
@@ -130,7 +137,7 @@ def read_manifest(folder: Path) -> Manifest:
         )
     try:
         return _parsed(content)
-    except (KeyError, TypeError, ValueError, AttributeError) as error:
+    except (KeyError, TypeError, ValueError, AttributeError, OverflowError) as error:
         raise LiteratureError(
             f"the manifest is damaged ({type(error).__name__}: {str(error)[:80]}); build it again",
             path=path,
@@ -145,13 +152,17 @@ def _parsed(content: dict[str, Any]) -> Manifest:
         raise TypeError("the description is not text")
     if not isinstance(description.invented, bool):
         raise TypeError("'invented' is not true or false")
-    counts = {str(name): int(value) for name, value in content["counts"].items()}
-    if any(value < 0 for value in counts.values()):
-        raise ValueError("a count is negative")
+    counts = dict(content["counts"])
+    if not all(type(value) is int and value >= 0 for value in counts.values()):
+        raise ValueError("a count is not a whole number")
+    if not counts["studies"] or not counts["terms"]:
+        raise ValueError("there is no study or no term")
     merged_by = content["merged_by"]
     if not (merged_by is None or isinstance(merged_by, str)):
         raise TypeError("'merged_by' is not a column name")
-    return Manifest(
+    if not isinstance(content["built_with"], dict) or not isinstance(content["import"], dict):
+        raise TypeError("'built_with' or 'import' is not an object")
+    manifest = Manifest(
         description=description,
         counts=counts,
         merged_by=merged_by,
@@ -163,6 +174,9 @@ def _parsed(content: dict[str, Any]) -> Manifest:
             )
             for name, entry in content["arrays"].items()
         },
-        built_with=dict(content["built_with"]),
-        report=dict(content["import"]),
+        built_with=content["built_with"],
+        report=content["import"],
     )
+    if content["fingerprint"] != manifest.fingerprint:
+        raise ValueError("the fingerprint is not that of the hashes")
+    return manifest

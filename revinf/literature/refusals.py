@@ -3,16 +3,28 @@
 from __future__ import annotations
 
 import csv
+import os
 from collections import Counter
 from collections.abc import Iterable
 from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
 
+from revinf.exceptions import InputFileError
+
 __all__ = ["ImportReport", "Notice"]
 
 _HEADER = ("file", "line", "reason", "row")
 _SHOWN_LINES = 5
+
+
+def _is_ours(path: Path) -> bool:
+    """Tell whether a file is a list of refused rows."""
+    if path.is_symlink() or not path.is_file():
+        return False
+    first_line = ",".join(_HEADER) + "\n"
+    with path.open("rb") as stream:
+        return stream.read(len(first_line)) == first_line.encode()
 
 
 @dataclass(frozen=True, slots=True)
@@ -82,18 +94,45 @@ class ImportReport:
         -------
         bool
             Whether there was anything to write.
+
+        Raises
+        ------
+        InputFileError
+            If the target is not a list of ours, or cannot be written.
         """
         if not self.refused:
-            if path.is_file() and path.read_bytes()[:64].startswith(",".join(_HEADER).encode()):
+            if _is_ours(path):
                 path.unlink()
             return False
-        beside = path.with_name(f".{path.name}.part")
-        with beside.open("w", encoding="utf-8", newline="") as stream:
-            writer = csv.writer(stream, lineterminator="\n")
-            writer.writerow(_HEADER)
-            writer.writerows(self.refused)
-        beside.replace(path)
+        self.check_target(path)
+        beside = path.with_name(f".{path.name}.part-{os.getpid()}")
+        try:
+            with beside.open("w", encoding="utf-8", newline="") as stream:
+                writer = csv.writer(stream, lineterminator="\n")
+                writer.writerow(_HEADER)
+                writer.writerows(self.refused)
+            beside.replace(path)
+        except OSError as error:
+            beside.unlink(missing_ok=True)
+            raise InputFileError(
+                f"cannot be written ({error.strerror or error}); choose another place with --out", path=path
+            ) from None
         return True
+
+    def check_target(self, path: Path) -> None:
+        """Refuse to write over a file that is not a list of refused rows.
+
+        Raises
+        ------
+        InputFileError
+            If there are refused rows to write and something else stands there.
+        """
+        if self.refused and (path.exists() or path.is_symlink()) and not _is_ours(path):
+            raise InputFileError(
+                f"{len(self.refused)} refused rows are to be listed here, but this is not a list of ours; "
+                "move it, or choose another place with --out",
+                path=path,
+            )
 
     def to_dict(self) -> dict[str, Any]:
         """Return the account as the manifest keeps it (refused rows by reason only)."""

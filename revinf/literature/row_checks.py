@@ -3,17 +3,22 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
 from numpy.typing import NDArray
 
+from revinf.exceptions import InputFileError
 from revinf.literature.rows import LINE
 
 if TYPE_CHECKING:
     import pandas as pd
 
-__all__ = ["Numbering", "RowChecks", "filled_groups", "numbers"]
+__all__ = ["MINUS", "Numbering", "RowChecks", "numbers", "record_groups"]
+
+MINUS = "\N{MINUS SIGN}"
+"""What word processors and publishers put in place of a hyphen."""
 
 
 class RowChecks:
@@ -39,10 +44,11 @@ class RowChecks:
 
     def refused_rows(self, delimiter: str) -> Iterator[tuple[int, str, str]]:
         """Yield line, reason and text of the refused rows, in order."""
-        cells = self.block.drop(columns=LINE)
-        for row in sorted(self._reasons):
-            text = delimiter.join(str(cell) for cell in cells.iloc[row])
-            yield int(self.block[LINE].iloc[row]), self._reasons[row], text
+        rows = sorted(self._reasons)
+        cells = self.block.drop(columns=LINE).to_numpy()[rows]
+        lines = self.block[LINE].to_numpy()[rows]
+        for row, line, row_cells in zip(rows, lines.tolist(), cells, strict=True):
+            yield line, self._reasons[row], delimiter.join(row_cells)
 
 
 class Numbering:
@@ -75,16 +81,31 @@ class Numbering:
 
 
 def numbers(text: pd.Series[str]) -> NDArray[np.float64]:
-    """Return the cells as numbers; NaN where a cell is not one."""
+    """Return the cells as numbers, a typographic minus read as minus; NaN where a cell is not one."""
     import pandas as pd
 
+    if text.str.contains(MINUS, regex=False).any():
+        text = text.str.replace(MINUS, "-", regex=False)
     return np.asarray(pd.to_numeric(text, errors="coerce"), dtype=np.float64)
 
 
-def filled_groups(block: pd.DataFrame, column: str) -> dict[str, str]:
-    """Return the group of each study of a block, where the column exists and is filled."""
+def record_groups(known: dict[str, str], block: pd.DataFrame, column: str, path: Path) -> None:
+    """Add the group of each study of a block to `known`, where the column exists and is filled.
+
+    Raises
+    ------
+    InputFileError
+        With the line, if a study is in two groups: the last row must not win in silence.
+    """
     if column not in block.columns:
-        return {}
-    pairs = block[["study", column]].drop_duplicates()
-    groups = zip(pairs["study"].str.strip(), pairs[column].str.strip(), strict=True)
-    return {study: group for study, group in groups if study and group}
+        return
+    pairs = block.drop_duplicates(["study", column])
+    cells = zip(pairs["study"].str.strip(), pairs[column].str.strip(), pairs[LINE], strict=True)
+    for study, group, line in cells:
+        if group and known.setdefault(study, group) != group:
+            raise InputFileError(
+                f"study {study!r} is in two groups, {known[study]!r} and {group!r}; give it one",
+                path=path,
+                row=int(line),
+                column=column,
+            )

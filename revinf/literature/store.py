@@ -6,7 +6,9 @@ renamed into place; what an interrupted build leaves behind is removed by the ne
 
 from __future__ import annotations
 
+import glob
 import hashlib
+import json
 import os
 import shutil
 import tempfile
@@ -110,13 +112,30 @@ def _umask() -> int:
 def _sweep(target: Path) -> None:
     """Remove what interrupted builds of this target left beside it."""
     for pattern in (f".{target.name}.building-*", f".{target.name}.old-*"):
-        for litter in target.parent.glob(pattern):
+        for litter in target.parent.glob(glob.escape(pattern[:-1]) + "*"):
             shutil.rmtree(litter, ignore_errors=True)
 
 
 def _is_literature(folder: Path) -> bool:
-    """Tell whether a folder may be replaced: a literature of ours, or empty."""
-    return folder.is_dir() and ((folder / MANIFEST).is_file() or not any(folder.iterdir()))
+    """Tell whether a folder may be replaced: empty, or nothing in it but parts of a literature.
+
+    A damaged literature may be (building again is its only cure); a folder in which somebody keeps a file
+    of his own, or another program's literature.json, may not.
+    """
+    if not folder.is_dir():
+        return False
+    names = {entry.name for entry in folder.iterdir()}
+    if not names <= {MANIFEST, *(f"{name}.npy" for name in ARRAY_TYPES)}:
+        return False
+    return names != {MANIFEST} or _states_our_format(folder / MANIFEST)
+
+
+def _states_our_format(path: Path) -> bool:
+    """Tell whether a manifest without arrays says that it is ours."""
+    try:
+        return str(json.loads(path.read_text(encoding="utf-8"))["format"]).startswith("revinf/")
+    except (OSError, ValueError, KeyError, TypeError, RecursionError):
+        return False
 
 
 def open_arrays(folder: Path) -> tuple[Manifest, Arrays]:

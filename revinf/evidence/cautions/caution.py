@@ -9,7 +9,7 @@ from typing import Any, Literal
 __all__ = ["Caution", "Severity"]
 
 Severity = Literal["stop", "weigh", "note"]
-"""stop: do not conclude before this is dealt with; weigh: the answer is weaker than it looks; note: know it."""
+"""stop: settle this first; weigh: the answer is weaker than it looks; note: know it."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

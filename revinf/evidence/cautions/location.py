@@ -18,8 +18,8 @@ def off_brain(tissue: str | None, outside_mm: float | None, limits: Thresholds) 
             code="off-brain",
             severity="stop",
             message=(
-                f"The peak lies more than {limits.off_brain_mm:g} mm outside the brain mask; check its signs, its "
-                "space and its units."
+                f"The peak lies more than {limits.off_brain_mm:g} mm outside the brain mask; check its "
+                "signs, its space and its units."
             ),
             evidence=evidence,
         )
@@ -40,8 +40,8 @@ def far_from_table(distance_mm: float | None, radius_mm: float | None, limits: T
         code="far-from-table",
         severity="weigh",
         message=(
-            f"The nearest place of the table is {distance_mm:.1f} mm from the peak, more than half of its radius "
-            f"of {radius_mm:g} mm; a literature would answer for the peak itself."
+            f"The nearest place of the table is {distance_mm:.1f} mm from the peak, more than half of its "
+            f"radius of {radius_mm:g} mm; a literature would answer for the peak itself."
         ),
         evidence={"distance_mm": distance_mm, "radius_mm": radius_mm},
     )

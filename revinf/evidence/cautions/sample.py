@@ -17,7 +17,7 @@ def thin_evidence(counts: Counts, ratio: Estimate, limits: Thresholds) -> Cautio
         return Caution(
             code="thin-evidence",
             severity="stop",
-            message="No counted study reports a peak here: the answer is the prior of the ratio, not evidence.",
+            message="No counted study has a peak here: the answer is the prior of the ratio, not evidence.",
             evidence=evidence,
         )
     if width <= limits.thin_weigh:
@@ -26,8 +26,8 @@ def thin_evidence(counts: Counts, ratio: Estimate, limits: Thresholds) -> Cautio
         code="thin-evidence",
         severity="stop" if width > limits.thin_stop else "weigh",
         message=(
-            f"The counts are few ({counts.term_active} of {counts.term_total} studies with the term): the upper "
-            f"end of the likelihood ratio is {width:.0f} times its lower end."
+            f"The counts are few ({counts.term_active} of {counts.term_total} studies with the term): the "
+            f"upper end of the likelihood ratio is {width:.0f} times its lower end."
         ),
         evidence=evidence,
     )
@@ -41,7 +41,8 @@ def prior_driven(ratio: Estimate, prior: float, limits: Thresholds) -> Caution |
         code="prior-driven",
         severity="weigh",
         message=(
-            f"The likelihood ratio's interval includes 1, so the posterior mostly repeats the prior of {prior:.2g}."
+            "The likelihood ratio's interval includes 1, so the posterior mostly repeats the prior of "
+            f"{prior:.2g}."
         ),
         evidence={"prior": prior, "ratio_low": ratio.low, "ratio_high": ratio.high},
     )

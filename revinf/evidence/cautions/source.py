@@ -42,8 +42,9 @@ def small_default(shipped: bool, n_studies: int, largest_share: float) -> Cautio
         code="small-default",
         severity="weigh",
         message=(
-            f"The base rates that ship with revinf come from {n_studies} experiments of a few social, memory and "
-            f"language topics, one of them {largest_share:.0%}. Bring a literature with revinf build."
+            f"The base rates that ship with revinf come from {n_studies} experiments of a few social, memory "
+            f"and language topics, one of them {largest_share:.0%} of all. Bring a literature of your own "
+            "with revinf build."
         ),
         evidence={"n_studies": n_studies, "largest_share": largest_share},
     )

@@ -1,0 +1,99 @@
+"""How every command fails: one line on stderr and exit code 2; 130 when interrupted.
+
+Also joins `--peak X Y Z` into one argument before parsing, since the option is repeatable and its numbers
+may be negative.
+"""
+
+from __future__ import annotations
+
+import sys
+from collections.abc import Sequence
+from typing import Any
+
+import typer.core
+
+from revinf.exceptions import RevinfError
+
+__all__ = ["LineGroup", "PeakCommand", "join_peaks"]
+
+
+class LineGroup(typer.core.TyperGroup):
+    """The commands of revinf, with every expected failure told in one line."""
+
+    def main(self, *args: Any, **kwargs: Any) -> Any:
+        """Run and exit with 0, 2, 3 or 130."""
+        kwargs["standalone_mode"] = False
+        try:
+            code = super().main(*args, **kwargs)
+        except RevinfError as error:
+            sys.exit(_fail(str(error)))
+        except (KeyboardInterrupt, typer.Abort):
+            sys.exit(_fail("interrupted; nothing was left half-written", code=130))
+        except BrokenPipeError:  # the reader of our output has gone, as in `revinf terms | head`
+            sys.stderr.close()
+            sys.exit(0)
+        except MemoryError:
+            sys.exit(_fail("there is not enough memory for this; use a smaller region or file"))
+        except Exception as error:
+            # The parser's own errors, whatever class this version of Typer gives them.
+            message = getattr(error, "format_message", None)
+            if message is None:
+                raise
+            sys.exit(_fail(f"{message()} See revinf --help."))
+        if code == 130:
+            sys.exit(_fail("interrupted; nothing was left half-written", code=130))
+        sys.exit(code if isinstance(code, int) else 0)
+
+
+def _fail(message: str, code: int = 2) -> int:
+    """Print one line on stderr and return the exit code."""
+    print("revinf: " + " ".join(message.split()), file=sys.stderr)
+    return code
+
+
+class PeakCommand(typer.core.TyperCommand):
+    """A command with the option `--peak X Y Z`."""
+
+    def parse_args(self, ctx: Any, args: list[str]) -> list[str]:
+        """Parse after joining the three numbers of each peak."""
+        return super().parse_args(ctx, join_peaks(args))
+
+
+def join_peaks(args: Sequence[str]) -> list[str]:
+    """Return the arguments with the three that follow each ``--peak`` joined to it.
+
+    Parameters
+    ----------
+    args : sequence of str
+        As typed.
+
+    Returns
+    -------
+    list of str
+        ``--peak=X Y Z`` as one argument each.
+
+    Examples
+    --------
+    >>> join_peaks(["--peak", "-4", "5", "6", "--term", "fear"])
+    ['--peak=-4 5 6', '--term', 'fear']
+    """
+    joined: list[str] = []
+    rest = list(args)
+    while rest:
+        head = rest.pop(0)
+        if head == "--peak":
+            numbers: list[str] = []
+            while rest and len(numbers) < 3 and (not rest[0].startswith("-") or _is_number(rest[0])):
+                numbers += rest.pop(0).replace(",", " ").split()
+            joined.append(f"--peak={' '.join(numbers)}")
+        else:
+            joined.append(head)
+    return joined
+
+
+def _is_number(text: str) -> bool:
+    """Tell whether an argument that starts with a hyphen is a number, or several in quotes."""
+    try:
+        return all(float(part) == float(part) for part in text.replace(",", " ").split())
+    except ValueError:
+        return False

@@ -1,0 +1,111 @@
+"""The options that several commands share, declared once."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from revinf.exceptions import InvalidClaimError
+
+__all__ = [
+    "AsJson",
+    "KindsFile",
+    "LiteratureFolder",
+    "NamedColumns",
+    "Peaks",
+    "Radius",
+    "TableFile",
+    "Transform",
+    "parsed_columns",
+    "parsed_peaks",
+]
+
+LiteratureFolder = Annotated[
+    Path | None,
+    typer.Option(
+        "--literature",
+        metavar="FOLDER",
+        help="Count in this literature, made by revinf build. [default: $REVINF_LITERATURE, else the open "
+        "base rates that ship with revinf]",
+        show_default=False,
+    ),
+]
+TableFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--table",
+        metavar="FILE",
+        help="Take the counts from this base-rate table (CSV, may be gzipped) instead of a literature.",
+        show_default=False,
+    ),
+]
+Peaks = Annotated[
+    list[str] | None,
+    typer.Option(
+        "--peak",
+        metavar="X Y Z",
+        help="A peak in mm; negative numbers as typed: --peak -24 -4 -18.",
+        show_default=False,
+    ),
+]
+Radius = Annotated[
+    float,
+    typer.Option("--radius", metavar="MM", help="Radius of the sphere around a peak, 0 to 200 mm."),
+]
+AsJson = Annotated[
+    bool, typer.Option("--json", help="Print JSON for a machine instead of a screen for a person.")
+]
+KindsFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--kinds",
+        metavar="FILE",
+        help="Your own table of terms (term, kind, domain, synonyms) instead of the shipped one.",
+        show_default=False,
+    ),
+]
+NamedColumns = Annotated[
+    list[str] | None,
+    typer.Option(
+        "--column",
+        metavar="OURS=YOURS",
+        help="What a column is called in your files, such as study=experiment. Repeatable.",
+        show_default=False,
+    ),
+]
+Transform = Annotated[
+    str,
+    typer.Option(
+        "--transform",
+        metavar="NAME",
+        help="Which published transform fits coordinates in Talairach space: pooled, spm, fsl (Lancaster et "
+        "al. 2007), or piecewise (Brett 1999).",
+    ),
+]
+
+
+def parsed_peaks(texts: list[str] | None) -> list[tuple[float, float, float]]:
+    """Return the peaks of the option as numbers."""
+    peaks = []
+    for text in texts or ():
+        try:
+            x, y, z = (float(part) for part in text.replace(",", " ").split())
+        except ValueError:
+            raise InvalidClaimError(
+                f"--peak needs three numbers in mm, but got {text!r}; write --peak 54 -54 24"
+            ) from None
+        peaks.append((x, y, z))
+    return peaks
+
+
+def parsed_columns(texts: list[str] | None) -> dict[str, str]:
+    """Return our column names and the files' names of them."""
+    columns: dict[str, str] = {}
+    for text in texts or ():
+        ours, separator, yours = (part.strip() for part in text.partition("="))
+        if not (separator and ours and yours):
+            raise InvalidClaimError(f"--column needs OURS=YOURS, but got {text!r}; write study=experiment")
+        columns[ours] = yours
+    return columns

@@ -1,0 +1,1 @@
+"""Views of answers: they compute nothing and decide nothing."""

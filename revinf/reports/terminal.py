@@ -1,0 +1,65 @@
+"""What every terminal screen shares: the console, headings, and lines that hang under a label."""
+
+from __future__ import annotations
+
+import sys
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from rich.console import Console
+    from rich.table import Table
+
+__all__ = ["hanging", "heading", "new_console", "plain_table", "show"]
+
+_WIDEST = 104
+"""Columns beyond which a line of prose is hard to read."""
+
+
+def new_console(width: int | None = None, *, to_stderr: bool = False) -> Console:
+    """Return a console on stdout; colours only where a terminal shows them and NO_COLOR is not set."""
+    from rich.console import Console
+
+    console = Console(file=sys.stderr if to_stderr else sys.stdout, highlight=False, soft_wrap=False)
+    wanted = width or (console.width if console.is_terminal else _WIDEST)
+    console.width = max(40, min(wanted, _WIDEST))
+    return console
+
+
+def show(*renderables: Any, width: int | None = None) -> None:
+    """Print to stdout."""
+    console = new_console(width)
+    for renderable in renderables:
+        console.print(renderable)
+
+
+def heading(text: str) -> Any:
+    """Return a heading with a blank line above it."""
+    from rich.text import Text
+
+    return Text.assemble("\n", (text, "bold"))
+
+
+def hanging(rows: list[tuple[str, str]], *, style: str = "dim", label_width: int = 11) -> Table:
+    """Return label and text pairs whose text hangs under itself where it wraps."""
+    from rich.table import Table
+    from rich.text import Text
+
+    table = Table.grid(padding=(0, 2, 0, 0))
+    table.add_column(style=style, min_width=label_width, no_wrap=True)
+    table.add_column(overflow="fold")
+    for label, text in rows:
+        table.add_row(Text(label), Text(text))
+    return table
+
+
+def plain_table(header: list[str], rows: list[list[str]], *, right: tuple[int, ...] = ()) -> Table:
+    """Return a table without rules; `right` names the columns that align right."""
+    from rich.table import Table
+    from rich.text import Text
+
+    table = Table(box=None, padding=(0, 2, 0, 0), header_style="dim")
+    for position, name in enumerate(header):
+        table.add_column(Text(name), justify="right" if position in right else "left", overflow="fold")
+    for row in rows:
+        table.add_row(*(Text(cell) for cell in row))
+    return table

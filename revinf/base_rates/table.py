@@ -14,6 +14,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from revinf.base_rates.counting import TermCounts
+from revinf.base_rates.table_checks import region_key
 from revinf.base_rates.table_rows import COUNT_COLUMNS, TableRow, read_rows
 from revinf.exceptions import SpaceError
 from revinf.spaces.coordinates import to_tenths
@@ -124,9 +125,9 @@ class BaseRateTable:
         SpaceError
             If there is none; names the ones that look like it.
         """
-        key = " ".join(name.split()).casefold()
+        key = region_key(name)
         for known in self._rows:
-            if " ".join(known.split()).casefold() == key:
+            if region_key(known) == key:
                 return self._region(known)
         near = get_close_matches(name, self.regions, n=3, cutoff=0.4) or self.regions[:3]
         raise SpaceError(

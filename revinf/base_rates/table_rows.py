@@ -17,6 +17,7 @@ from functools import lru_cache
 from pathlib import Path
 from typing import NamedTuple
 
+from revinf.base_rates.table_checks import TableChecks
 from revinf.exceptions import InputFileError
 from revinf.literature.spelling import normalise_term
 
@@ -121,8 +122,8 @@ def write_table(rows: Iterable[TableRow], path: str | Path) -> int:
 
 
 def _short(value: float) -> str:
-    """Return a number of millimetres without a trailing zero."""
-    return f"{value:.1f}".removesuffix(".0")
+    """Return a number of millimetres as it would be typed."""
+    return f"{value + 0.0:.12g}"
 
 
 def _read_bytes(path: Path) -> bytes:
@@ -144,9 +145,10 @@ def _read_bytes(path: Path) -> bytes:
 
 def _parse(text: str, path: Path) -> Iterator[TableRow]:
     """Yield the checked rows of a table."""
-    delimiter = "\t" if "\t" in text[: text.find("\n") if "\n" in text else None] else ","
+    delimiter = max(",\t;", key=text.partition("\n")[0].count)
     reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=True)
-    seen: set[tuple[str, str]] = set()
+    check = TableChecks(path)
+    line = 1  # a quoted cell can span lines: a row is named by its first
     try:
         header = [name.strip() for name in next(reader, [])]
         for name in ("region", "term", *COUNT_COLUMNS):
@@ -159,21 +161,16 @@ def _parse(text: str, path: Path) -> Iterator[TableRow]:
         if len(set(header)) != len(header):
             raise InputFileError("a column stands twice in the header", path=path, row=1)
         parse = _RowParser(header, path)
+        line = reader.line_num + 1
         for cells in reader:
-            if not any(cells):
-                continue
-            row = parse(cells, reader.line_num)
-            if (row.region, row.term) in seen:
-                raise InputFileError(
-                    f"region {row.region!r} and term {row.term!r} stand here a second time; keep one row",
-                    path=path,
-                    row=reader.line_num,
-                )
-            seen.add((row.region, row.term))
-            yield row
+            if any(cell.strip() for cell in cells):
+                row = parse(cells, line)
+                check(row, line)
+                yield row
+            line = reader.line_num + 1
     except csv.Error as error:
         raise InputFileError(
-            f"the row cannot be split ({error}); check for stray quotes", path=path, row=reader.line_num
+            f"the row cannot be split ({error}); check for stray quotes", path=path, row=line
         ) from None
 
 

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from pathlib import Path
 
 from revinf.base_rates.counting import count_terms
+from revinf.base_rates.table_checks import region_key
 from revinf.base_rates.table_rows import TableRow
 from revinf.exceptions import InputFileError, InvalidClaimError, SpaceError
 from revinf.literature.literature import Literature
@@ -122,32 +123,58 @@ def listed_places(
     ------
     InputFileError
         With line and column, for a cell that cannot be used or a name that stands twice.
+    SpaceError
+        If the transform is not a known one.
     """
     table = open_delimited(path, rename)
     table.require("region", "x", "y", "z")
+    talairach_to_mni((0.0, 0.0, 0.0), transform)  # an unknown name fails whether or not a row needs it
     places: dict[str, NamedSphere] = {}
     for block in table.blocks():
         for cells in block.to_dict("records"):
             line, name = int(cells[LINE]), str(cells["region"]).strip()
-            if not name or name in places:
+            if not name or region_key(name) in places:
                 raise InputFileError(
                     f"region {name!r} is empty or stands twice; give each place its own name",
                     path=path,
                     row=line,
                     column="region",
                 )
-            try:
-                xyz = [float(cells[axis]) for axis in ("x", "y", "z")]
-                if normalise_space(str(cells.get("space") or "MNI152").strip()) == "Talairach":
-                    xyz = talairach_to_mni(xyz, transform).tolist()
-                places[name] = NamedSphere(name, sphere(xyz, float(cells.get("radius_mm") or radius_mm)))
-            except (ValueError, SpaceError) as error:
-                raise InputFileError(
-                    f"{' '.join(str(error).split())}; write numbers in mm", path=path, row=line
-                ) from None
+            texts = {str(column): str(cell).strip() for column, cell in cells.items()}
+            places[region_key(name)] = NamedSphere(
+                name, _listed_sphere(texts, radius_mm, transform, path, line)
+            )
     if not places:
         raise InputFileError("the list has no places; give at least one row", path=path)
     return list(places.values())
+
+
+def _listed_sphere(texts: dict[str, str], radius_mm: float, transform: str, path: Path, line: int) -> Sphere:
+    """Return the sphere of one row; name the cell that cannot be used."""
+    values = {"radius_mm": radius_mm}
+    for column in ("x", "y", "z", "radius_mm"):
+        text = texts.get(column, "")
+        if column != "radius_mm" or text:
+            try:
+                values[column] = float(text)
+            except ValueError:
+                raise InputFileError(
+                    f"{text[:40]!r} is not a number; write millimetres with a decimal point",
+                    path=path,
+                    row=line,
+                    column=column,
+                ) from None
+    column = "space"
+    try:
+        space = normalise_space(texts.get("space") or "MNI152")
+        column = "x"
+        xyz = [values[axis] for axis in ("x", "y", "z")]
+        centre = talairach_to_mni(xyz, transform) if space == "Talairach" else xyz
+        sphere(centre, 0.0)
+        column = "radius_mm"
+        return sphere(centre, values["radius_mm"])
+    except SpaceError as error:
+        raise InputFileError(str(error), path=path, row=line, column=column) from None
 
 
 def tabulate(

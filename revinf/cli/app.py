@@ -21,7 +21,6 @@ app = typer.Typer(
     name="revinf",
     cls=LineGroup,
     add_completion=False,
-    no_args_is_help=True,
     pretty_exceptions_enable=False,
     help="How much does activity in a place say about the process that a paper claims? Checks reverse "
     "inferences against base rates of the literature. Speaks of group-level literature, never of a person.",

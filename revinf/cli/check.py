@@ -102,6 +102,6 @@ def check(
         print_json(assessment.to_dict())
     else:
         from revinf.reports.check_screen import check_screen
-        from revinf.reports.terminal import show
+        from revinf.reports.terminal import screen_width, show
 
-        show(*check_screen(assessment))
+        show(*check_screen(assessment, width=screen_width()))

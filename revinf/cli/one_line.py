@@ -6,6 +6,7 @@ may be negative.
 
 from __future__ import annotations
 
+import os
 import sys
 from collections.abc import Sequence
 from typing import Any
@@ -25,12 +26,15 @@ class LineGroup(typer.core.TyperGroup):
         kwargs["standalone_mode"] = False
         try:
             code = super().main(*args, **kwargs)
+            sys.stdout.flush()
         except RevinfError as error:
             sys.exit(_fail(str(error)))
         except (KeyboardInterrupt, typer.Abort):
             sys.exit(_fail("interrupted; nothing was left half-written", code=130))
-        except BrokenPipeError:  # the reader of our output has gone, as in `revinf terms | head`
-            sys.stderr.close()
+        except (BrokenPipeError, SystemExit):
+            # The reader of our output has gone, as in `revinf terms | head`; the parser and rich make a
+            # SystemExit of it. What is still buffered must not fail again when the interpreter ends.
+            os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
             sys.exit(0)
         except MemoryError:
             sys.exit(_fail("there is not enough memory for this; use a smaller region or file"))
@@ -39,7 +43,7 @@ class LineGroup(typer.core.TyperGroup):
             message = getattr(error, "format_message", None)
             if message is None:
                 raise
-            sys.exit(_fail(f"{message()} See revinf --help."))
+            sys.exit(_fail(f"{message().rstrip('.')}. See revinf --help."))
         if code == 130:
             sys.exit(_fail("interrupted; nothing was left half-written", code=130))
         sys.exit(code if isinstance(code, int) else 0)
@@ -76,24 +80,32 @@ def join_peaks(args: Sequence[str]) -> list[str]:
     --------
     >>> join_peaks(["--peak", "-4", "5", "6", "--term", "fear"])
     ['--peak=-4 5 6', '--term', 'fear']
+    >>> join_peaks(["--peak=−4,", "5", "6"])
+    ['--peak=-4 5 6']
     """
     joined: list[str] = []
     rest = list(args)
     while rest:
         head = rest.pop(0)
-        if head == "--peak":
-            numbers: list[str] = []
+        name, _, first = head.partition("=")
+        if name == "--peak":
+            numbers = _plain(first).split()
             while rest and len(numbers) < 3 and (not rest[0].startswith("-") or _is_number(rest[0])):
-                numbers += rest.pop(0).replace(",", " ").split()
+                numbers += _plain(rest.pop(0)).split()
             joined.append(f"--peak={' '.join(numbers)}")
         else:
             joined.append(head)
     return joined
 
 
+def _plain(text: str) -> str:
+    """Return coordinates with spaces for commas and hyphens for the minus signs that papers print."""
+    return text.translate({ord(","): " ", ord("\N{MINUS SIGN}"): "-", ord("\N{EN DASH}"): "-"})
+
+
 def _is_number(text: str) -> bool:
     """Tell whether an argument that starts with a hyphen is a number, or several in quotes."""
     try:
-        return all(float(part) == float(part) for part in text.replace(",", " ").split())
+        return all(float(part) == float(part) for part in _plain(text).split())
     except ValueError:
         return False

@@ -207,7 +207,7 @@ def _claimed(term: str, answer: Answer, source: Source, words: Vocabulary) -> tu
             term=term,
             near=tuple(same),
         )
-    raise unknown_term(term, terms, where)
+    raise unknown_term(term, terms, where, words.sounding_like(term, terms))
 
 
 def _assessed(claim: Claim, answer: Answer, prior: float) -> AssessedClaim:

@@ -72,13 +72,14 @@ class TablePlace:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Place:
-    """Where the region is, in words; `outside_mm` is the distance from the brain mask."""
+    """Where the region is, in words; `outside_mm` and `grey_mm` are distances to brain and grey matter."""
 
     hemisphere: str | None
     tissue: str | None
     nearest: Nearest | None
     words: str
     outside_mm: float | None = None
+    grey_mm: float | None = None
     table_region: TablePlace | None = None
 
 

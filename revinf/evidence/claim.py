@@ -55,7 +55,7 @@ class Claim:
     InvalidClaimError
         If there is no term, or not exactly one of peak, mask and region.
     SpaceError
-        If a coordinate or the radius is out of range.
+        If a coordinate or the radius is out of range, or space or transform is unknown.
     InvalidProbabilityError
         If the prior is not strictly between 0 and 1.
 
@@ -99,6 +99,7 @@ class Claim:
             )
             object.__setattr__(self, "prior", prior)
         space = normalise_space(self.space)
+        talairach_to_mni((0.0, 0.0, 0.0), self.transform)  # an unknown name fails even where none is needed
         points = tuple(self._checked(point) for point in self.peaks)
         for name, value in (("term", term), ("peaks", points), ("space", space)):
             object.__setattr__(self, name, value)

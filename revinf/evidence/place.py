@@ -7,6 +7,7 @@ from revinf.evidence.claim import Point
 from revinf.spaces.brain import (
     BrainReference,
     distance_outside_mm,
+    distance_to_grey_mm,
     hemisphere,
     nearest_label,
     place_in_words,
@@ -43,6 +44,7 @@ def place_of_peak(brain: BrainReference, peak: Point, table_region: TablePlace |
         else Nearest(label=label.label, distance_mm=label.distance_mm, source=label.source),
         words=place_in_words(brain, peak),
         outside_mm=distance_outside_mm(brain, peak),
+        grey_mm=distance_to_grey_mm(brain, peak),
         table_region=table_region,
     )
 

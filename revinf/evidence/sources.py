@@ -123,6 +123,7 @@ class TableSource:
             invented=self.table.invented,
             fingerprint=self.table.fingerprint,
             kind="shipped table" if self.shipped else "table",
+            merged=False if self.shipped else None,
         )
 
     def answer(self, claim: Claim) -> Answer:

@@ -61,7 +61,7 @@ def list_terms(source: Source, query: str = "", vocabulary: Vocabulary | None = 
     Examples
     --------
     >>> from revinf.evidence.sources import choose_source
-    >>> [row.term for row in list_terms(choose_source(None, None, {}), "tom").rows]
+    >>> [row.term for row in list_terms(choose_source(None, None, {}), "mentalising").rows]
     ['theory of mind']
     """
     words = vocabulary or shipped_vocabulary()

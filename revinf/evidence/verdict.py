@@ -37,15 +37,16 @@ def verdict(
     """
     if direction == "undecided":
         sentence = f"In this literature, activity here does not tell studies of {term!r} from the others"
-    elif direction == "against":
-        sentence = (
-            f"In this literature, activity here is rarer in studies of {term!r} than in the others: it "
-            f"speaks against the claim ({grade_words(str(headline_grade))})"
-        )
     else:
+        words = grade_words(str(headline_grade))
+        how = (
+            "commoner in studies of {term} than in the others"
+            if direction == "for"
+            else "rarer in studies of {term} than in the others, which speaks against the claim"
+        )
         sentence = (
-            f"In this literature, activity here is commoner in studies of {term!r} than in the others "
-            f"({grade_words(str(headline_grade))})"
+            f"In this literature, activity here is {how.format(term=repr(term))} "
+            f"(at the weaker end of the interval: {words})"
         )
     if "stop" in severities:
         return f"{sentence}; do not rest a conclusion on it before the cautions marked stop are dealt with."

@@ -4,8 +4,9 @@ from __future__ import annotations
 
 import csv
 import io
-from collections.abc import Iterable, Mapping
+from collections.abc import Collection, Iterable, Mapping
 from dataclasses import dataclass, field
+from difflib import get_close_matches
 from functools import cache
 from pathlib import Path
 from typing import Literal
@@ -65,6 +66,18 @@ class Vocabulary:
     def names_of(self, term: str) -> frozenset[str]:
         """Return all names of a process, the given one included."""
         return self.synonyms.get(term, frozenset({term}))
+
+    def sounding_like(self, term: str, among: Collection[str]) -> list[str]:
+        """Return the terms of which a name looks like the given one, best first.
+
+        Examples
+        --------
+        >>> shipped_vocabulary().sounding_like("mentalising", ["pain", "theory of mind"])
+        ['theory of mind']
+        """
+        owners = {name: known for known in among for name in self.names_of(known)}
+        near = get_close_matches(term, list(owners), n=5, cutoff=0.6)
+        return list(dict.fromkeys(owners[name] for name in near))
 
     @classmethod
     def read(cls, path: str | Path) -> Vocabulary:
@@ -142,7 +155,7 @@ def shipped_vocabulary() -> Vocabulary:
 
     Examples
     --------
-    >>> "tom" in shipped_vocabulary().names_of("theory of mind")
+    >>> "mentalising" in shipped_vocabulary().names_of("theory of mind")
     True
     """
     return Vocabulary.of(

@@ -61,10 +61,9 @@ def read_studies(
         report.refuse(table.path.name, checks.refused_rows(table.delimiter))
         report.kept[table.path.name] += int(checks.fine.sum())
         record_groups(result.group, block[checks.fine], group_column, table.path)
-        dois = block["doi"].str.strip() if "doi" in block.columns else study.where(False, "")
-        for name, doi, line in zip(
-            study[checks.fine], dois[checks.fine], block[LINE][checks.fine], strict=True
-        ):
+        rows = block[checks.fine]
+        dois = rows["doi"].str.strip() if "doi" in rows.columns else [""] * len(rows)
+        for name, doi, line in zip(study[checks.fine], dois, rows[LINE], strict=True):
             if name in seen:
                 repeated.append(int(line))
             seen.add(name)

@@ -206,11 +206,8 @@ def _refusals_in_words(report: ImportReport) -> str:
     """Return how many rows were refused and the commonest reason, in brackets; empty if none."""
     if not report.refused:
         return ""
-    _, reason, rows, lines = max(report.by_reason(), key=lambda item: item[2])
-    return (
-        f" ({len(report.refused)} rows were refused; the commonest reason, {rows} times, first in line "
-        f"{lines[0]}: {reason})"
-    )
+    file, reason, _, lines = max(report.by_reason(), key=lambda item: item[2])
+    return f" (rows refused: {len(report.refused)}; most often, first at {file}:{lines[0]}: {reason})"
 
 
 def _notice_ungrouped(ungrouped: set[str], group_of: dict[str, str], report: ImportReport) -> None:

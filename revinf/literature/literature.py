@@ -252,7 +252,7 @@ class Literature:
             ) from None
 
 
-def unknown_term(term: str, known: Sequence[str], where: str) -> UnknownTermError:
+def unknown_term(term: str, known: Sequence[str], where: str, near: Sequence[str] = ()) -> UnknownTermError:
     """Return the error for a term that labels nothing, with the terms that look like it.
 
     Parameters
@@ -263,6 +263,8 @@ def unknown_term(term: str, known: Sequence[str], where: str) -> UnknownTermErro
         The terms there are.
     where : str
         What was searched, for the message.
+    near : sequence of str, optional
+        Terms that are known to be close, shown first.
 
     Returns
     -------
@@ -274,7 +276,9 @@ def unknown_term(term: str, known: Sequence[str], where: str) -> UnknownTermErro
     >>> str(unknown_term("paim", ["fear", "pain"], "the table"))
     "no study in the table carries the term 'paim'; did you mean 'pain'?"
     """
-    near = [name for name in known if term in name or name in term][:3] if term else []
+    near = list(near)
+    if term:
+        near += [name for name in known if (term in name or name in term) and name not in near][:3]
     near += [name for name in get_close_matches(term, known, n=5, cutoff=0.6) if name not in near]
     if near:
         hint = "did you mean " + " or ".join(repr(name) for name in near[:5]) + "?"

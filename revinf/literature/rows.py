@@ -89,9 +89,7 @@ class DelimitedFile:
 
         line = 2
         try:
-            with warnings.catch_warnings(), open_text(self.path) as stream:
-                # pandas only warns where it would drop the cells beyond the header's.
-                warnings.simplefilter("error", pd.errors.ParserWarning)
+            with open_text(self.path) as stream:
                 reader = pd.read_csv(
                     stream,
                     sep=self.delimiter,
@@ -105,7 +103,7 @@ class DelimitedFile:
                     chunksize=BLOCK_ROWS,
                     on_bad_lines="error",
                 )
-                for block in reader:
+                while (block := _next_block(reader)) is not None:
                     line = _number_lines(block, line)
                     filled = (block.drop(columns=LINE) != "").any(axis=1)
                     yield block[filled].reset_index(drop=True)
@@ -154,6 +152,10 @@ def open_delimited(path: Path, rename: Mapping[str, str] | None = None) -> Delim
         raise _unreadable(path, error) from None
     if "\x00" in header or len(header) >= _HEADER_LIMIT:
         raise InputFileError("this is not a text table; give a CSV or TSV file", path=path, row=1)
+    if header.count('"') % 2:
+        raise InputFileError(
+            "a quote in the header never closes; keep the header on one line", path=path, row=1
+        )
     if not header.strip():
         raise InputFileError("the file has no header line; the first line must name the columns", path=path)
     delimiter = "\t" if path.name.removesuffix(".gz").endswith(".tsv") else ","
@@ -198,6 +200,17 @@ def _renamed(names: list[str], rename: Mapping[str, str], path: Path) -> tuple[s
     return tuple(columns)
 
 
+def _next_block(reader: Iterator[pd.DataFrame]) -> pd.DataFrame | None:
+    """Return the next block, None at the end."""
+    import pandas as pd
+
+    # pandas only warns where it would drop the cells beyond the header's. The filter must not stay on
+    # while a consumer works on the block.
+    with warnings.catch_warnings():
+        warnings.simplefilter("error", pd.errors.ParserWarning)
+        return next(reader, None)
+
+
 def _number_lines(block: pd.DataFrame, first: int) -> int:
     """Add the column `LINE` to a block and return the line that follows it."""
     import numpy as np
@@ -218,11 +231,25 @@ def _plain(error: Exception) -> str:
     return f"the rows do not fit the header ({text}); check for stray separators or an open quote"
 
 
+def _undecodable_line(path: Path) -> int | None:
+    """Return the first line that is not UTF-8: a decoder only knows the place within its buffer."""
+    try:
+        with _open_bytes(path) as stream:
+            for number, line in enumerate(stream, start=1):
+                try:
+                    line.decode("utf-8")
+                except UnicodeDecodeError:
+                    return number
+    except (OSError, EOFError, zlib.error):
+        pass
+    return None
+
+
 def _unreadable(path: Path, error: Exception) -> InputFileError:
     """Say in one line why a file cannot be read."""
     if isinstance(error, UnicodeDecodeError):
         return InputFileError(
-            f"byte {error.start} is not UTF-8 text; save the file as CSV in UTF-8", path=path
+            "this is not UTF-8 text; save the file as CSV in UTF-8", path=path, row=_undecodable_line(path)
         )
     if isinstance(error, FileNotFoundError):
         return InputFileError("there is no such file; check the path", path=path)

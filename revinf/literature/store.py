@@ -12,6 +12,7 @@ import json
 import os
 import shutil
 import tempfile
+import warnings
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
 from pathlib import Path
@@ -111,8 +112,8 @@ def _umask() -> int:
 
 def _sweep(target: Path) -> None:
     """Remove what interrupted builds of this target left beside it."""
-    for pattern in (f".{target.name}.building-*", f".{target.name}.old-*"):
-        for litter in target.parent.glob(glob.escape(pattern[:-1]) + "*"):
+    for beginning in (f".{target.name}.building-", f".{target.name}.old-"):
+        for litter in target.parent.glob(glob.escape(beginning) + "*"):
             shutil.rmtree(litter, ignore_errors=True)
 
 
@@ -199,15 +200,18 @@ def _open_array(path: Path, entry: ArrayEntry) -> NDArray[Any]:
     try:
         if path.is_symlink():
             raise ValueError("a symbolic link")
-        array = np.load(path, mmap_mode="r", allow_pickle=False)
+        with warnings.catch_warnings():
+            warnings.simplefilter("error")  # numpy only warns of a header that needs repair
+            array = np.lib.format.open_memmap(path, mode="r")  # knows neither pickles nor archives
     except FileNotFoundError:
         raise LiteratureError("this array is missing; build the literature again", path=path) from None
-    except (OSError, ValueError, EOFError, SyntaxError, TypeError) as error:
+    # A broken header can raise nearly anything: numpy hands it to the tokenizer of Python.
+    except Exception as error:
         raise LiteratureError(
             f"this array cannot be read ({' '.join(str(error).split())[:80]}); build the literature again",
             path=path,
         ) from None
-    if not isinstance(array, np.ndarray) or (str(array.dtype), array.shape) != (entry.dtype, entry.shape):
+    if (str(array.dtype), array.shape) != (entry.dtype, entry.shape):
         raise LiteratureError(
             "this array's type or shape is not what the manifest says; build the literature again",
             path=path,

@@ -12,6 +12,7 @@ from revinf.reports.numbers import (
     count,
     interval,
     p_value,
+    percent,
     probability,
     ratio,
     strip,
@@ -24,7 +25,10 @@ if TYPE_CHECKING:
 
 __all__ = ["check_screen"]
 
-_STRIP = 31
+_STRIP = 25
+_NARROW = 90
+"""Columns below which a drawn interval would squeeze the words beside it."""
+
 _DECADES = 2.0
 """The ratio's strip runs from 1/100 to 100."""
 
@@ -32,24 +36,27 @@ _MARKS = {"stop": ("■", "bold red"), "weigh": ("▲", "yellow"), "note": ("·"
 """Shape and colour: the shape alone tells the severities apart in greyscale."""
 
 
-def check_screen(assessment: Assessment) -> list[Any]:
+def check_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
     """Return the screen of an assessment.
 
     Parameters
     ----------
     assessment : Assessment
         From `revinf.assess`.
+    width : int, columns, default 104
+        Of the terminal; a narrow one gets no drawn intervals.
 
     Returns
     -------
     list
         Renderables for `revinf.reports.terminal.show`.
     """
+    drawn = width >= _NARROW
     return [
         *_opening(assessment),
-        *_counts(assessment),
-        *_ratio(assessment),
-        *_posteriors(assessment),
+        *_counts(assessment, drawn),
+        *_ratio(assessment, drawn),
+        *_posteriors(assessment, drawn),
         *_cautions(assessment),
         *_closing(),
     ]
@@ -91,7 +98,7 @@ def _where(assessment: Assessment) -> str:
     return where if claim.region_kind == "table" else f"{where}, within {claim.radius_mm:g} mm"
 
 
-def _counts(assessment: Assessment) -> list[Any]:
+def _counts(assessment: Assessment, drawn: bool) -> list[Any]:
     """Return the four counts and both rates."""
     counts, rates = assessment.counts, assessment.rates
     rows = [
@@ -103,8 +110,15 @@ def _counts(assessment: Assessment) -> list[Any]:
         ),
         _rate_row("all others", counts.other_active, counts.other_total, rates.active_given_other),
     ]
-    header = ["studies", "active here", f"rate ({assessment.level:.0%} interval)", _axis("0", "1")]
-    return [heading("How often is this place active?"), plain_table(header, rows, right=(1,))]
+    header = ["studies", "active here", f"rate ({percent(assessment.level)} interval)", _axis("0", "1")]
+    return [heading("How often is this place active?"), _table(header, rows, drawn, right=(1,))]
+
+
+def _table(header: list[str], rows: list[list[str]], drawn: bool, *, right: tuple[int, ...] = ()) -> Any:
+    """Return a table whose last column is a drawn interval, or without it."""
+    if not drawn:
+        header, rows = header[:-1], [row[:-1] for row in rows]
+    return plain_table(header, rows, right=right)
 
 
 def _rate_row(name: str, active: int, total: int, rate: HasInterval | None) -> list[str]:
@@ -125,7 +139,7 @@ def _axis(left: str, right: str, middle: str = "") -> str:
     return left + " " * (gap // 2) + middle + " " * (gap - gap // 2) + right
 
 
-def _ratio(assessment: Assessment) -> list[Any]:
+def _ratio(assessment: Assessment, drawn: bool) -> list[Any]:
     """Return the likelihood ratio with direction and grades."""
     answer = assessment.likelihood_ratio
     value = answer.value
@@ -136,10 +150,10 @@ def _ratio(assessment: Assessment) -> list[Any]:
             "likelihood ratio",
             interval(value, ratio),
             f"observed {observed}",
-            strip(low, middle, high, _STRIP),
+            strip(low, middle, high, _STRIP, mark=0.5),
         ]
     ]
-    header = ["", "estimate and interval", "", _axis("1/100", "100", "1")]
+    header = ["", f"estimate ({percent(assessment.level)} interval)", "", _axis("1/100", "100", "1")]
     line = grade_line(answer.direction, answer.headline_grade, answer.estimate_grade)
     if answer.headline_grade is not None:
         line += f' (the published scale calls that "{grade_words(answer.headline_grade)}")'
@@ -155,7 +169,7 @@ def _ratio(assessment: Assessment) -> list[Any]:
         )
     return [
         heading("How much does activity here tell?"),
-        plain_table(header, rows),
+        _table(header, rows, drawn),
         hanging([("reading", line), *tests]),
     ]
 
@@ -165,43 +179,47 @@ def _on_log_axis(value: float) -> float:
     return (math.log10(value) + _DECADES) / (2 * _DECADES)
 
 
-def _posteriors(assessment: Assessment) -> list[Any]:
+def _posteriors(assessment: Assessment, drawn: bool) -> list[Any]:
     """Return the posteriors and the priors one must have held."""
     counts = assessment.counts
     asked, prevalent = assessment.posterior, assessment.posterior_at_prevalence
     rows = []
     if asked.prior != prevalent.prior:
         name = "even odds" if asked.prior == 0.5 else "as asked"
-        rows.append(_posterior_row(name, asked, ""))
-    observed = ""
+        rows.append(_posterior_row(name, asked))
+    rows.append(_posterior_row("share of the studies", prevalent))
+    header = ["at a prior of", f"posterior ({percent(assessment.level)} interval)", _axis("0", "1")]
+    lines = []
     if prevalent.observed is not None:
-        observed = (
-            f"observed {count(counts.term_active)} of {count(counts.active_total)} = "
-            f"{probability(prevalent.observed)}"
+        lines.append(
+            (
+                "observed",
+                f"of the studies active here, {count(counts.term_active)} of {count(counts.active_total)} = "
+                f"{probability(prevalent.observed)} carry the term",
+            )
         )
-    rows.append(_posterior_row("share of studies with the term", prevalent, observed))
-    header = ["prior", "", "posterior (interval)", _axis("0", "1"), ""]
-    needed = "; ".join(
-        f"{item.target:.2f} needs a prior of {probability(item.estimate)} ({probability(item.at_low)} at the "
-        "ratio's low end)"
+    lines += [
+        (
+            f"for {item.target:.2f}",
+            f"the prior must have been {probability(item.estimate)}, or {probability(item.at_low)} at the "
+            "lower end of the ratio",
+        )
         for item in assessment.required_prior
-    )
+    ]
     return [
         heading(f"How probable is {assessment.claim.term!r}, given the activity?"),
-        plain_table(header, rows),
-        hanging([("to reach", needed), ("in words", assessment.wording)]),
+        _table(header, rows, drawn),
+        hanging([*lines, ("in words", assessment.wording)]),
     ]
 
 
-def _posterior_row(name: str, posterior: Posterior, observed: str) -> list[str]:
+def _posterior_row(name: str, posterior: Posterior) -> list[str]:
     """Return one row of prior and posterior."""
     value = posterior.value
     return [
-        probability(posterior.prior),
-        name,
+        f"{probability(posterior.prior)} ({name})",
         interval(value),
         strip(value.low, value.estimate, value.high, _STRIP),
-        observed,
     ]
 
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import Protocol
 
-__all__ = ["coordinates", "count", "interval", "p_value", "probability", "ratio", "strip"]
+__all__ = ["coordinates", "count", "interval", "p_value", "percent", "probability", "ratio", "strip"]
 
 
 class HasInterval(Protocol):
@@ -83,6 +83,17 @@ def p_value(value: float) -> str:
     return f"{value:.2g}"
 
 
+def percent(level: float) -> str:
+    """Write the probability that an interval holds, with every digit that was asked for.
+
+    Examples
+    --------
+    >>> percent(0.95), percent(0.999)
+    ('95%', '99.9%')
+    """
+    return f"{100 * level:.9g}%"
+
+
 def interval(estimate: HasInterval, write: object = probability) -> str:
     """Write an estimate and its interval.
 
@@ -108,16 +119,22 @@ def coordinates(point: Sequence[float]) -> str:
     return "(" + ", ".join(f"{value:g}".replace("-", "−") for value in point) + ")"
 
 
-def strip(low: float, middle: float, high: float, width: int) -> str:
+def strip(low: float, middle: float, high: float, width: int, *, mark: float | None = None) -> str:
     """Draw an interval as a line of characters; the arguments are positions from 0 to 1.
+
+    `mark` is a position to compare with, drawn as a bar where the interval leaves it free.
 
     Examples
     --------
     >>> strip(0.2, 0.5, 0.8, 11)
     '··├──●──┤··'
+    >>> strip(0.5, 0.7, 0.9, 11, mark=0.1)
+    '·│···├─●─┤·'
     """
     at = [min(width - 1, max(0, round(position * (width - 1)))) for position in (low, middle, high)]
     cells = ["·"] * width
+    if mark is not None:
+        cells[round(mark * (width - 1))] = "│"
     cells[at[0] : at[2] + 1] = "─" * (at[2] - at[0] + 1)
     cells[at[0]], cells[at[2]] = "├", "┤"
     cells[at[1]] = "●"

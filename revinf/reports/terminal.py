@@ -9,7 +9,7 @@ if TYPE_CHECKING:
     from rich.console import Console
     from rich.table import Table
 
-__all__ = ["hanging", "heading", "new_console", "plain_table", "show"]
+__all__ = ["hanging", "heading", "new_console", "plain_table", "screen_width", "show"]
 
 _WIDEST = 104
 """Columns beyond which a line of prose is hard to read."""
@@ -23,6 +23,11 @@ def new_console(width: int | None = None, *, to_stderr: bool = False) -> Console
     wanted = width or (console.width if console.is_terminal else _WIDEST)
     console.width = max(40, min(wanted, _WIDEST))
     return console
+
+
+def screen_width() -> int:
+    """Return the columns that a screen on stdout has."""
+    return new_console().width
 
 
 def show(*renderables: Any, width: int | None = None) -> None:
@@ -59,7 +64,12 @@ def plain_table(header: list[str], rows: list[list[str]], *, right: tuple[int, .
 
     table = Table(box=None, padding=(0, 2, 0, 0), header_style="dim")
     for position, name in enumerate(header):
-        table.add_column(Text(name), justify="right" if position in right else "left", overflow="fold")
+        table.add_column(
+            Text(name),
+            justify="right" if position in right else "left",
+            overflow="fold",
+            no_wrap=position > 0,  # numbers and strips stay whole; the first column gives way
+        )
     for row in rows:
         table.add_row(*(Text(cell) for cell in row))
     return table

@@ -29,6 +29,7 @@ __all__ = [
     "LabelledPoint",
     "brain_reference",
     "distance_outside_mm",
+    "distance_to_grey_mm",
     "grey_lattice",
     "hemisphere",
     "nearest_label",
@@ -104,8 +105,40 @@ def distance_outside_mm(reference: BrainReference, xyz_mm: ArrayLike) -> float:
     >>> distance_outside_mm(brain_reference(), (0, 0, 900))
     inf
     """
+    return _distance_to(reference, xyz_mm, (OTHER, GREY, WHITE))
+
+
+def distance_to_grey_mm(reference: BrainReference, xyz_mm: ArrayLike) -> float:
+    """Return how far a place lies from grey matter.
+
+    Parameters
+    ----------
+    reference : BrainReference
+    xyz_mm : (3,) array-like, mm, MNI152
+
+    Returns
+    -------
+    float, mm
+        0 in a voxel of grey matter or on its face, else the distance to the nearest centre of one;
+        infinity beyond 60 mm.
+
+    Raises
+    ------
+    SpaceError
+        If the coordinates are not three finite millimetres.
+
+    Examples
+    --------
+    >>> distance_to_grey_mm(brain_reference(), (54, -54, 24))
+    2.0
+    """
+    return _distance_to(reference, xyz_mm, (GREY,))
+
+
+def _distance_to(reference: BrainReference, xyz_mm: ArrayLike, codes: tuple[int, ...]) -> float:
+    """Return the distance to the nearest centre of a voxel with one of the codes, 0 inside one."""
     tenths = to_tenths(xyz_mm).reshape(-1, 3)
-    if _touched_codes(reference, tenths).any():
+    if np.isin(_touched_codes(reference, tenths), codes).any():
         return 0.0
     point = tenths[0] / 10.0
     inverse = np.linalg.inv(reference.affine)
@@ -117,7 +150,7 @@ def distance_outside_mm(reference: BrainReference, xyz_mm: ArrayLike) -> float:
         low = np.clip(centre - half, 0, reference.tissue.shape)
         high = np.clip(centre + half + 1, 0, reference.tissue.shape)
         box = reference.tissue[low[0] : high[0], low[1] : high[1], low[2] : high[2]]
-        ijk = np.argwhere(box) + low
+        ijk = np.argwhere(np.isin(box, codes)) + low
         if len(ijk):
             away = ijk @ reference.affine[:3, :3].T + reference.affine[:3, 3] - point
             nearest = float(np.sqrt((away**2).sum(axis=1).min()))

@@ -13,7 +13,7 @@ import numpy as np
 from numpy.polynomial import legendre
 from numpy.typing import NDArray
 
-__all__ = ["panel_nodes", "panel_quantiles"]
+__all__ = ["panel_masses", "panel_nodes", "panel_quantiles"]
 
 NODES = 12
 """Nodes a panel: a polynomial of degree 11 resolves a Gaussian over two standard deviations to 1e-10."""
@@ -55,6 +55,29 @@ def panel_nodes(start: float, stop: float, n_panels: int) -> NDArray[np.float64]
     return np.asarray(middle[:, None] + half[:, None] * _rule()[0])
 
 
+def panel_masses(density: NDArray[np.float64]) -> NDArray[np.float64]:
+    """Return the integral over each panel, in half panels.
+
+    Parameters
+    ----------
+    density : (D, n_panels, nodes) array
+        Densities at the nodes of `panel_nodes`.
+
+    Returns
+    -------
+    (D, n_panels) array
+        Integrals, to be multiplied by half a panel's width.
+
+    Examples
+    --------
+    >>> t = panel_nodes(0.0, 2.0, 1)
+    >>> round(float(panel_masses(t[None])[0, 0]), 12)  # half of 2 squared
+    2.0
+    """
+    # Sums row by row, not a matrix product: its rounding may depend on how many densities there are.
+    return np.asarray((density * _rule()[1]).sum(axis=-1))
+
+
 def panel_quantiles(
     density: NDArray[np.float64], start: float, stop: float, levels: NDArray[np.float64]
 ) -> NDArray[np.float64]:
@@ -81,17 +104,17 @@ def panel_quantiles(
     >>> [round(abs(float(v)), 6) for v in q[0]]
     [0.0, 1.959964]
     """
-    _, weights, to_coefficients = _rule()
+    _, _, to_coefficients = _rule()
     n_densities, n_panels, _ = density.shape
     half = (stop - start) / n_panels / 2
-    mass = half * (density @ weights)
+    mass = half * panel_masses(density)
     edges = np.concatenate([np.zeros((n_densities, 1)), np.cumsum(mass, axis=1)], axis=1)
     edges /= edges[:, -1:]
     total = mass.sum(axis=1)
     # Panel of each quantile: the last edge at or below the level.
     panel = (edges[:, None, 1:-1] <= levels[None, :, None]).sum(axis=2)
     rows = np.arange(n_densities)[:, None]
-    coefficients = density[rows, panel] @ to_coefficients.T
+    coefficients = (density[rows, panel][..., None, :] * to_coefficients).sum(axis=-1)
     wanted = (levels[None, :] - edges[rows, panel]) * total[:, None] / half
     position = _invert(coefficients, wanted)
     return np.asarray(start + half * (2 * panel + 1 + position))
@@ -102,7 +125,7 @@ def _invert(coefficients: NDArray[np.float64], wanted: NDArray[np.float64]) -> N
     series = np.moveaxis(coefficients, -1, 0)
     integral = legendre.legint(series, lbnd=-1, axis=0)
     low, high = np.full(wanted.shape, -1.0), np.full(wanted.shape, 1.0)
-    x = np.zeros(wanted.shape)
+    x, settled = np.zeros(wanted.shape), np.zeros(wanted.shape, dtype=bool)
     # Newton, kept inside a shrinking bracket: the antiderivative grows, the density may be near zero.
     for _ in range(60):
         excess = legendre.legval(x, integral, tensor=False) - wanted
@@ -112,7 +135,9 @@ def _invert(coefficients: NDArray[np.float64], wanted: NDArray[np.float64]) -> N
             step = x - excess / slope
         inside = (step > low) & (step < high)
         following = np.where(inside, step, (low + high) / 2)
-        if np.all(np.abs(following - x) <= 1e-15):
-            return following
-        x = following
+        # What has settled stays, so that no density's digits depend on its company.
+        settled |= np.abs(following - x) <= 1e-15
+        if np.all(settled):
+            break
+        x = np.where(settled, x, following)
     return x

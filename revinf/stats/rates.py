@@ -10,17 +10,22 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 import numpy as np
-from numpy.typing import NDArray
+from numpy.typing import ArrayLike, NDArray
 
 from revinf.exceptions import InvalidCountError
 from revinf.stats.estimates import Estimate, check_level
 from revinf.stats.quadrature import panel_nodes, panel_quantiles
 
-__all__ = ["beta_quantiles", "jeffreys_rate", "jeffreys_rates"]
+__all__ = ["beta_quantiles", "count_arrays", "jeffreys_rate", "jeffreys_rates"]
 
-_REACH = 5.2
-"""On the stretched axis: 90 standard deviations, where the slowest tail, e^(v/2), is below 1e-30."""
-_PANELS = 16
+_PANEL = 0.65
+"""Width of a panel on the stretched axis."""
+_SIDE = 8
+"""Panels a side: they reach 90 standard deviations, where the tail of a shape of 1/2 is below 1e-30."""
+_FADE = 45.0
+"""A shape below 1/2 has a longer tail, and gets panels until that is at e^-45 = 3e-20."""
+_ROWS = 1024
+"""Distributions solved at once: 1.5 MB an array."""
 
 
 def jeffreys_rate(active: int, total: int, *, level: float = 0.95) -> Estimate | None:
@@ -108,6 +113,54 @@ def jeffreys_rates(pairs: Sequence[tuple[int, int]], *, level: float = 0.95) -> 
     return result
 
 
+def count_arrays(active: ArrayLike, total: ArrayLike) -> tuple[NDArray[np.int64], NDArray[np.int64]]:
+    """Return hits and studies of many terms as arrays, checked.
+
+    Parameters
+    ----------
+    active : (T,) array-like of int
+        Studies of each term that hit the region.
+    total : (T,) array-like of int
+        All studies of each term.
+
+    Returns
+    -------
+    active, total : (T,) int64 arrays
+        The same counts.
+
+    Raises
+    ------
+    InvalidCountError
+        If the lengths differ, a count is not whole, or `active` is not between 0 and `total`.
+
+    Examples
+    --------
+    >>> [part.tolist() for part in count_arrays([1, 0], [3, 2])]
+    [[1, 0], [3, 2]]
+    """
+    given = np.asarray(active), np.asarray(total)
+    if given[0].ndim != 1 or given[0].shape != given[1].shape:
+        raise InvalidCountError(
+            f"active and total must be two lists of one length, but got shapes {given[0].shape} and "
+            f"{given[1].shape}; give both counts for each term"
+        )
+    checked = []
+    for name, array in zip(("active", "total"), given, strict=True):
+        whole = array.astype(np.int64) if array.dtype.kind in "iuf" and np.isfinite(array).all() else None
+        if array.size and (whole is None or np.any(whole != array)):
+            raise InvalidCountError(
+                f"{name} must hold whole numbers, but got {array.tolist()[:3]!r}; give counts of studies"
+            )
+        checked.append(np.zeros(0, dtype=np.int64) if whole is None else whole)
+    k, n = checked
+    wrong = (k < 0) | (k > n)
+    if wrong.any():
+        raise InvalidCountError(
+            f"active must lie between 0 and total, but got {k[wrong][0]} of {n[wrong][0]}; check the counts"
+        )
+    return k, n
+
+
 def beta_quantiles(
     a: NDArray[np.float64], b: NDArray[np.float64], levels: NDArray[np.float64]
 ) -> NDArray[np.float64]:
@@ -116,7 +169,7 @@ def beta_quantiles(
     Parameters
     ----------
     a, b : (D,) arrays
-        Shapes, 1/2 or more.
+        Shapes, 1e-6 or more.
     levels : (L,) array, probability
         Where the distribution function is inverted.
 
@@ -128,7 +181,9 @@ def beta_quantiles(
     Notes
     -----
     Integrated over v = logit(p), centred at the mode of the density in v and stretched by sinh, so that
-    both a Gaussian core and exponential tails are resolved, whatever the counts.
+    both a Gaussian core and exponential tails are resolved, whatever the counts. A shape below 1/2 flattens
+    the tail on its side and leaves the bend beside it where a shape of 1/2 has it: the centre and the
+    stretch are those of 1/2. A quantile below 1e-308 is returned as 0.
 
     Examples
     --------
@@ -136,19 +191,32 @@ def beta_quantiles(
     >>> round(float(q[0, 0]), 6)  # sin(pi/8) squared
     0.146447
     """
-    t = panel_nodes(-_REACH, _REACH, _PANELS)
-    a, b = a[:, None, None], b[:, None, None]
-    mode, spread = np.log(a / b), np.sqrt(1 / a + 1 / b)
-    v = mode + spread * np.sinh(t)
-    # log p and log (1-p), both exact in their own tail; differences from the mode keep large counts exact.
-    log_p = _log_sigmoid(v) - _log_sigmoid(mode)
-    log_q = _log_sigmoid(-v) - _log_sigmoid(-mode)
-    density = np.exp(a * log_p + b * log_q) * np.cosh(t)
-    stretched = panel_quantiles(density, -_REACH, _REACH, levels)
-    quantile = mode[..., 0] + spread[..., 0] * np.sinh(stretched)
-    return np.asarray(np.exp(_log_sigmoid(quantile)))
+    wide_a, wide_b = np.maximum(a, 0.5), np.maximum(b, 0.5)
+    mode, spread = np.log(wide_a / wide_b), np.sqrt(1 / wide_a + 1 / wide_b)
+    sides = np.stack([_panels(a, spread), _panels(b, spread)])
+    result = np.empty((len(a), len(levels)))
+    for below, above in np.unique(sides, axis=1).T.tolist():
+        start, stop = -below * _PANEL, above * _PANEL
+        t = panel_nodes(start, stop, below + above)
+        group = np.flatnonzero((sides[0] == below) & (sides[1] == above))
+        for rows in np.split(group, range(_ROWS, len(group), _ROWS)):
+            middle, scale = mode[rows, None, None], spread[rows, None, None]
+            log_p, log_q = _log_sigmoids(middle + scale * np.sinh(t))
+            # Each exact in its own tail; differences from the mode keep large counts exact.
+            top_p, top_q = _log_sigmoids(middle)
+            density = np.exp(a[rows, None, None] * (log_p - top_p) + b[rows, None, None] * (log_q - top_q))
+            stretched = panel_quantiles(density * np.cosh(t), start, stop, levels)
+            result[rows] = np.exp(_log_sigmoids(middle[..., 0] + scale[..., 0] * np.sinh(stretched))[0])
+    return result
 
 
-def _log_sigmoid(v: NDArray[np.float64]) -> NDArray[np.float64]:
-    """Return log(1 / (1 + exp(-v))) without overflow."""
-    return np.asarray(-np.logaddexp(0.0, -v))
+def _panels(shape: NDArray[np.float64], spread: NDArray[np.float64]) -> NDArray[np.intp]:
+    """Return how many panels the side of a shape needs, in steps of four, so that many share a grid."""
+    needed = 4 * np.ceil(np.arcsinh(_FADE / (shape * spread)) / _PANEL / 4)
+    return np.where(shape < 0.5, np.maximum(needed, _SIDE), _SIDE).astype(np.intp)
+
+
+def _log_sigmoids(v: NDArray[np.float64]) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
+    """Return log p and log (1-p) of the logit v, without overflow."""
+    rest = np.log1p(np.exp(-np.abs(v)))
+    return np.minimum(v, 0.0) - rest, np.minimum(-v, 0.0) - rest

@@ -8,13 +8,14 @@ normal with 95 % between 1/limit and limit (Greenland 2006); no evidence then re
 from __future__ import annotations
 
 from collections.abc import Sequence
+from typing import get_args
 
 import numpy as np
 from numpy.typing import NDArray
 
-from revinf.exceptions import InvalidCountError
+from revinf.exceptions import InvalidCountError, InvalidProbabilityError
 from revinf.stats.estimates import Counts, Estimate, check_level
-from revinf.stats.ratio_density import RatioPrior, log_ratio_posterior
+from revinf.stats.ratio_density import RatioPrior, log_ratio_posterior_and_ahead
 
 __all__ = [
     "DEFAULT_LIMIT",
@@ -22,11 +23,15 @@ __all__ = [
     "likelihood_ratio",
     "likelihood_ratios",
     "log_ratio_quantiles",
+    "log_ratio_summary",
     "observed_ratio",
 ]
 
 DEFAULT_LIMIT = 20.0
 """95 % of the prior of R lies between 1/20 and 20."""
+
+_LARGEST_LIMIT = 1e9
+"""A wider prior would reach beyond the range of ln R in which the posterior is looked for."""
 
 
 def likelihood_ratio(
@@ -46,7 +51,7 @@ def likelihood_ratio(
         Posterior probability that the interval holds.
     prior : {"shared", "independent"}, default "shared"
         Prior of the two rates.
-    limit : float, ratio > 1, default 20
+    limit : float, ratio, 1 < limit <= 1e9, default 20
         With the shared prior: 95 % of the prior of the ratio lies between 1/limit and limit.
 
     Returns
@@ -57,9 +62,9 @@ def likelihood_ratio(
     Raises
     ------
     InvalidCountError
-        If `limit` is not a number above 1.
+        If `limit` is not a number above 1 and at most 1e9.
     InvalidProbabilityError
-        If `level` is not strictly between 0 and 1.
+        If `level` is not strictly between 0 and 1, or `prior` is unknown.
 
     Notes
     -----
@@ -104,9 +109,9 @@ def likelihood_ratios(
     Raises
     ------
     InvalidCountError
-        If `limit` is not a number above 1.
+        If `limit` is not a number above 1 and at most 1e9.
     InvalidProbabilityError
-        If `level` is not strictly between 0 and 1.
+        If `level` is not strictly between 0 and 1, or `prior` is unknown.
 
     Examples
     --------
@@ -175,7 +180,9 @@ def log_ratio_quantiles(
     Raises
     ------
     InvalidCountError
-        If `limit` is not a finite number above 1.
+        If `limit` is not a number above 1 and at most 1e9.
+    InvalidProbabilityError
+        If the levels are not symmetric about 1/2, or `prior` is unknown.
 
     Notes
     -----
@@ -188,21 +195,70 @@ def log_ratio_quantiles(
     >>> bool(q[0, 1] == 0), bool(q[0, 0] == -q[0, 2])
     (True, True)
     """
-    if not (np.isfinite(limit) and limit > 1):
-        raise InvalidCountError(f"the limit of the ratio's prior must be above 1, but got {limit!r}; use 20")
+    return log_ratio_summary(tables, levels, prior=prior, limit=limit)[0]
+
+
+def log_ratio_summary(
+    tables: Sequence[Counts],
+    levels: NDArray[np.float64],
+    *,
+    prior: RatioPrior = "shared",
+    limit: float = DEFAULT_LIMIT,
+) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
+    """Return posterior quantiles of ln R and P(R > 1).
+
+    Parameters
+    ----------
+    tables, levels, prior, limit
+        As in `log_ratio_quantiles`.
+
+    Returns
+    -------
+    (T, L) array, (T,) array
+        Quantiles of ln R; probabilities that the ratio is above 1, exactly 1 minus that of the swapped
+        table, exactly 1/2 for a table that is its own.
+
+    Raises
+    ------
+    InvalidCountError, InvalidProbabilityError
+        As in `log_ratio_quantiles`.
+
+    Examples
+    --------
+    >>> _, ahead = log_ratio_summary([Counts(5, 3, 2, 7), Counts(2, 7, 5, 3)], np.array([0.5]))
+    >>> bool(ahead[0] == 1 - ahead[1])
+    True
+    """
+    if not 1 < limit <= _LARGEST_LIMIT:
+        raise InvalidCountError(
+            f"the limit of the ratio's prior must be above 1 and at most 1e9, but got {limit!r}; use 20"
+        )
+    if prior not in get_args(RatioPrior):
+        raise InvalidProbabilityError(
+            f"the ratio's prior must be one of {', '.join(get_args(RatioPrior))}, "
+            f"but got {prior!r}; use shared"
+        )
+    if not np.allclose(levels + levels[::-1], 1, rtol=0, atol=1e-12):
+        raise InvalidProbabilityError(
+            f"levels must be symmetric about 1/2, but got {levels.tolist()}; use 0.025, 0.5 and 0.975"
+        )
     if not tables:
-        return np.empty((0, len(levels)))
+        return np.empty((0, len(levels))), np.empty(0)
     oriented = [min(table.as_tuple(), table.swapped().as_tuple()) for table in tables]
     distinct = sorted(set(oriented))
-    solved: dict[tuple[int, ...], NDArray[np.float64]] = {}
+    solved: dict[tuple[int, ...], tuple[NDArray[np.float64], float]] = {}
     for block in range(0, len(distinct), 64):  # bounds memory: about 12 MB a block
         part = distinct[block : block + 64]
-        quantiles = log_ratio_posterior(np.array(part, dtype=np.float64), levels, prior, limit)
-        solved.update(zip(part, quantiles, strict=True))
-    result = np.empty((len(tables), len(levels)))
+        rows, ahead = log_ratio_posterior_and_ahead(np.array(part, dtype=np.float64), levels, prior, limit)
+        # 1 - p is exact for p >= 1/2 only: from there its twin is taken, so that 1 - (1 - p) is p.
+        likelier = np.maximum(ahead, 1 - ahead)
+        ahead = np.where(ahead >= 0.5, likelier, 1 - likelier)
+        solved.update(zip(part, zip(rows, ahead.tolist(), strict=True), strict=True))
+    quantiles, above = np.empty((len(tables), len(levels))), np.empty(len(tables))
     for i, (table, key) in enumerate(zip(tables, oriented, strict=True)):
-        row = solved[key]
+        row, share = solved[key]
         if table.as_tuple() == table.swapped().as_tuple():
-            row = (row - row[::-1]) / 2
-        result[i] = row if table.as_tuple() == key else -row[::-1]
-    return result
+            row, share = (row - row[::-1]) / 2, 0.5
+        turned = table.as_tuple() != key
+        quantiles[i], above[i] = (-row[::-1], 1 - share) if turned else (row, share)
+    return quantiles, above

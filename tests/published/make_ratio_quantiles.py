@@ -17,6 +17,7 @@ import platform
 import sys
 from collections.abc import Callable
 from functools import cache
+from itertools import pairwise
 from multiprocessing import Pool
 from pathlib import Path
 from typing import NamedTuple
@@ -45,6 +46,8 @@ CASES = (  # hits and studies with the term, hits and studies without it
     (62, 63, 388, 388),
     (63, 63, 388, 388),
     (1, 1, 200000, MILLION),
+    (1, 1, 50000, MILLION),
+    (1, 1, 500, 10000),
     (0, 1, MILLION, MILLION),
     (1, MILLION, 0, MILLION),
     (MILLION, MILLION, 0, MILLION),
@@ -96,7 +99,9 @@ def gauss_legendre(order: int, digits: int) -> list[tuple[mpf, mpf]]:
 def integral(f: Callable[[mpf], mpf], start: mpf, stop: mpf, settings: Settings) -> mpf:
     """Integrate over one panel."""
     middle, half = (start + stop) / 2, (stop - start) / 2
-    return half * mp.fsum(w * f(middle + half * x) for x, w in gauss_legendre(settings.order, settings.digits))
+    return half * mp.fsum(
+        w * f(middle + half * x) for x, w in gauss_legendre(settings.order, settings.digits)
+    )
 
 
 class Posterior:
@@ -136,8 +141,9 @@ class Posterior:
     def density(self, log_ratio: mpf) -> mpf:
         """Density of ln R: the free rate integrated out."""
         edges = self._inner_edges(float(log_ratio))
-        pairs = zip(edges[:-1], edges[1:], strict=True)
-        return mp.fsum(integral(lambda v: self.kernel(v, log_ratio), a, b, self.settings) for a, b in pairs)
+        return mp.fsum(
+            integral(lambda v: self.kernel(v, log_ratio), a, b, self.settings) for a, b in pairwise(edges)
+        )
 
     def _inner_edges(self, log_ratio: float) -> list[mpf]:
         """Panels around the top of the kernel in v, placed in doubles."""
@@ -182,30 +188,33 @@ class Posterior:
         return [mpf(edge) for edge in sorted(edges)]
 
     def outer_panels(self) -> list[tuple[mpf, mpf, mpf]]:
-        """Panels in ln R with their mass: from the observed ratio outwards, graded towards the cusp at 0."""
+        """Panels in ln R with their mass: from the observed ratio outwards, finer at cusp and cliffs."""
         a, b, c, d = (n + 0.5 for n in (self.n11, self.n10, self.n01, self.n00))
         start = float(np.log(a / (a + b)) - np.log(c / (c + d)))
         scale = float(np.sqrt(b / (a * (a + b)) + d / (c * (c + d))))
         scale = min(scale, float(self.sd)) if self.shared else scale
-        graded = [side * scale * 8.0**-k for side in (-1, 1) for k in range(8)]
-        breaks = np.array(sorted([0.0, *graded]))
+        breaks = np.array([0.0] + [side * scale * 8.0**-k for side in (-1, 1) for k in range(8)])
+        # Where the larger probability reaches 1 the density breaks off, over the width of the other's log.
+        for side, hits, misses in ((1, c, d), (-1, a, b)):
+            cliff, width = -side * np.log(hits / (hits + misses)), np.sqrt(misses / (hits * (hits + misses)))
+            breaks = np.append(breaks, cliff + side * width * np.array([-512, -64, -8, -4, -2, 0, 2, 4, 8]))
         panels: list[tuple[mpf, mpf, mpf]] = []
         top = self.density(mpf(start if start else scale / 100))
         for side in (-1, 1):
             place, step = start, 1.5 * scale
             while True:
-                ahead = breaks[(breaks - place) * side > 1e-12 * scale]
                 stop = place + side * step
-                if ahead.size:
-                    nearest = float(ahead.min() if side > 0 else ahead.max())
-                    stop = nearest if (stop - nearest) * side > 0 else stop
+                between = breaks[((breaks - place) * side > 1e-12 * scale) & ((breaks - stop) * side < 0)]
+                if between.size:
+                    stop = float(between.min() if side > 0 else between.max())
+                else:
+                    step = min(step * self.settings.growth, self.settings.widest)
                 edges = sorted((mpf(place), mpf(stop)))
                 panels.append((*edges, integral(self.density, *edges, self.settings)))
                 end = self.density(mpf(stop if stop else side * scale * 1e-9))
                 top = max(top, end)
                 if end < top * mp.exp(-self.settings.drop):
                     break
-                step = min(step * self.settings.growth, self.settings.widest) if stop - place == side * step else step
                 place = stop
         return sorted(panels)
 
@@ -218,10 +227,11 @@ class Posterior:
 
     def _quantile(self, panels: list[tuple[mpf, mpf, mpf]], wanted: mpf, total: mpf) -> mpf:
         """Root of the distribution function: Newton inside the panel, halving where that would leave it."""
-        for left, right, mass in panels:
-            if wanted <= mass:
-                break
-            wanted -= mass
+        index = 0
+        while wanted > panels[index][2]:
+            wanted -= panels[index][2]
+            index += 1
+        left, right, mass = panels[index]
         low, high = left, right
         x = left + (right - left) * wanted / mass
         for _ in range(80):
@@ -259,7 +269,8 @@ def main(n_processes: int) -> None:
 Made by      tests/published/make_ratio_quantiles.py (its docstring says how); generated, not for editing
 With         mpmath {mpmath.__version__}, Python {platform.python_version()}
 On           {datetime.date.today().isoformat()}
-Precision    {Settings().digits} decimal digits; Gauss-Legendre of order {Settings().order} on panels; quantiles to 1e-13 of probability
+Precision    {Settings().digits} decimal digits; Gauss-Legendre of order {Settings().order} on panels;
+             quantiles to 1e-13 of probability
 Columns      counts n11, n10, n01, n00; prior; level (probability); log_ratio_quantile (no unit)
 Tolerance    1e-6 on the posterior scale at even odds, |logistic(ours) - logistic(reference)|: the promise
              made for the ends of an interval. The reference itself is far better than that: solved again

@@ -2,17 +2,27 @@
 
 from __future__ import annotations
 
+from math import isfinite
+
 from revinf.evidence.cautions.caution import Caution
 from revinf.evidence.cautions.thresholds import Thresholds
 
 __all__ = ["far_from_table", "off_brain"]
 
 
-def off_brain(tissue: str | None, outside_mm: float | None, limits: Thresholds) -> Caution | None:
+_WHERE = {
+    "outside": "just outside the brain mask",
+    "other brain": "between the tissues",
+}
+
+
+def off_brain(
+    tissue: str | None, outside_mm: float | None, grey_mm: float | None, limits: Thresholds
+) -> Caution | None:
     """Warn where the peak lies outside the brain, or inside it but not in grey matter."""
-    if tissue is None or outside_mm is None or tissue == "grey matter":
+    if tissue is None or outside_mm is None or grey_mm is None or tissue == "grey matter":
         return None
-    evidence = {"tissue": tissue, "outside_mm": min(outside_mm, 1000.0)}
+    evidence = {"tissue": tissue, "outside_mm": _finite(outside_mm), "grey_mm": _finite(grey_mm)}
     if outside_mm > limits.off_brain_mm:
         return Caution(
             code="off-brain",
@@ -23,13 +33,21 @@ def off_brain(tissue: str | None, outside_mm: float | None, limits: Thresholds) 
             ),
             evidence=evidence,
         )
-    where = "just outside the brain mask" if tissue == "outside" else f"in {tissue}"
+    where = _WHERE.get(tissue, f"in {tissue}")
     return Caution(
         code="off-brain",
         severity="weigh",
-        message=f"The peak lies {where} of the standard brain, not in grey matter.",
+        message=(
+            f"The peak lies {where} of the standard brain, not in grey matter, which begins "
+            f"{grey_mm:.0f} mm away."
+        ),
         evidence=evidence,
     )
+
+
+def _finite(distance_mm: float) -> float | None:
+    """Return a distance, or None where it is beyond what was searched."""
+    return distance_mm if isfinite(distance_mm) else None
 
 
 def far_from_table(distance_mm: float | None, radius_mm: float | None, limits: Thresholds) -> Caution | None:

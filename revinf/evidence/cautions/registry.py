@@ -49,7 +49,7 @@ def cautions_of(
     table_region = place.table_region
     candidates = (
         invented_data(facts.invented),
-        off_brain(place.tissue, place.outside_mm, limits),
+        off_brain(place.tissue, place.outside_mm, place.grey_mm, limits),
         thin_evidence(assessment.counts, ratio, limits),
         prior_driven(ratio, assessment.posterior.prior, limits),
         not_a_process(term, words.what(term)),

@@ -19,8 +19,9 @@ from revinf.knowledge import VERSION as __version__
 
 if TYPE_CHECKING:
     from revinf.base_rates.table import BaseRateTable
-    from revinf.evidence.assess import Choices, assess
+    from revinf.evidence.assess import assess
     from revinf.evidence.assessment import Assessment
+    from revinf.evidence.choices import Choices
     from revinf.evidence.claim import Claim
     from revinf.literature.building import build_literature
     from revinf.literature.import_options import ImportOptions
@@ -43,7 +44,7 @@ __all__ = [
 _HOMES = {
     "Assessment": "revinf.evidence.assessment",
     "BaseRateTable": "revinf.base_rates.table",
-    "Choices": "revinf.evidence.assess",
+    "Choices": "revinf.evidence.choices",
     "Claim": "revinf.evidence.claim",
     "Description": "revinf.literature.manifest",
     "ImportOptions": "revinf.literature.import_options",

@@ -50,9 +50,7 @@ def invented_files(tmp_path_factory: pytest.TempPathFactory) -> ImportOptions:
 
 
 @pytest.fixture(scope="session")
-def invented_literature(
-    invented_files: ImportOptions, tmp_path_factory: pytest.TempPathFactory
-) -> Literature:
+def invented_literature(invented_files: ImportOptions, tmp_path_factory: pytest.TempPathFactory) -> Literature:
     """Give the tiny invented literature, opened; do not write to its folder."""
     target = tmp_path_factory.mktemp("invented-built") / "literature"
     description = Description(name="tiny invented literature", source="invented for tests", invented=True)

@@ -28,16 +28,12 @@ def outputs() -> dict[str, str]:
 def run(command: str) -> str:
     """Run a revinf command of the README and return its output without trailing spaces."""
     words = shlex.split(command)
-    done = subprocess.run(
-        [sys.executable, "-m", *words], capture_output=True, text=True, check=True, timeout=120
-    )
+    done = subprocess.run([sys.executable, "-m", *words], capture_output=True, text=True, check=True, timeout=120)
     return "".join(line.rstrip() + "\n" for line in done.stdout.splitlines())
 
 
 if __name__ == "__main__":
     README.write_text(
-        _OUTPUT.sub(
-            lambda match: match[1] + run(match["command"]) + match[4], README.read_text(encoding="utf-8")
-        ),
+        _OUTPUT.sub(lambda match: match[1] + run(match["command"]) + match[4], README.read_text(encoding="utf-8")),
         encoding="utf-8",
     )

@@ -51,23 +51,17 @@ def refresh(folder: Path) -> str:
     description = folder / DESCRIPTION
     package = json.loads(description.read_text(encoding="utf-8"))
     files = {
-        path.relative_to(folder).as_posix()
-        for path in folder.rglob("*")
-        if path.is_file() and path != description
+        path.relative_to(folder).as_posix() for path in folder.rglob("*") if path.is_file() and path != description
     }
     take_in_planned(package, files)
     listed = {resource["path"] for resource in package["resources"]}
     if unlisted := sorted(files - listed):
-        raise ValueError(
-            f"no entry in {description} for {', '.join(unlisted)}; write one, or remove the file"
-        )
+        raise ValueError(f"no entry in {description} for {', '.join(unlisted)}; write one, or remove the file")
     if missing := sorted(listed - files):
         raise ValueError(f"{description} lists {', '.join(missing)}, which does not exist; remove the entry")
     for resource in package["resources"]:
         resource.update(measure(folder / resource["path"]))
-    description.write_text(
-        json.dumps(package, indent=2, ensure_ascii=False) + "\n", encoding="utf-8", newline="\n"
-    )
+    description.write_text(json.dumps(package, indent=2, ensure_ascii=False) + "\n", encoding="utf-8", newline="\n")
     return f"{len(listed)} tables described in {description}"
 
 

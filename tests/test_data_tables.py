@@ -276,8 +276,7 @@ def test_word_has_its_kind(term: str, kind: str) -> None:
 def test_grades_are_those_of_kass_and_raftery() -> None:
     """Kass & Raftery 1995, J Am Stat Assoc 90:773-795: 1 to 3, 3 to 20, 20 to 150, over 150."""
     bounds = [
-        (row["grade"], float(row["lower"]), float(row["upper"] or math.inf))
-        for row in rows_of("evidence_grades")
+        (row["grade"], float(row["lower"]), float(row["upper"] or math.inf)) for row in rows_of("evidence_grades")
     ]
     assert bounds == [
         ("bare", 1, 3),
@@ -321,9 +320,7 @@ def test_active_counts_do_not_exceed_their_totals(entry: dict[str, Any]) -> None
 
 
 def run_refresh(folder: Path) -> subprocess.CompletedProcess[str]:
-    return subprocess.run(
-        [sys.executable, str(SCRIPT), str(folder)], capture_output=True, text=True, check=False
-    )
+    return subprocess.run([sys.executable, str(SCRIPT), str(folder)], capture_output=True, text=True, check=False)
 
 
 @pytest.fixture

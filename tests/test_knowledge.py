@@ -144,9 +144,7 @@ def test_tables_are_found_from_any_working_folder(tmp_path: Path) -> None:
         f"import sys; sys.path.insert(0, {str(site)!r}); import revinf.knowledge as k; "
         "print(k.__file__, [row['grade'] for row in k.read_table('evidence_grades')], sep='|')"
     )
-    done = subprocess.run(
-        [sys.executable, "-c", code], cwd=tmp_path, capture_output=True, text=True, check=False
-    )
+    done = subprocess.run([sys.executable, "-c", code], cwd=tmp_path, capture_output=True, text=True, check=False)
     assert done.stderr == ""
     assert done.stdout.strip() == f"{site / 'revinf' / 'knowledge.py'}|{GRADES}"
 

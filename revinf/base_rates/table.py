@@ -22,6 +22,7 @@ from revinf.spaces.coordinates import to_tenths
 __all__ = ["BaseRateTable", "TableRegion"]
 
 _DEFAULT_RADIUS_MM = 10.0
+_FEWEST_REGIONS = 20
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -98,6 +99,27 @@ class BaseRateTable:
     def terms(self) -> list[str]:
         """The terms of all regions, sorted."""
         return sorted({row.term for rows in self._rows.values() for row in rows})
+
+    def activation_percentile(self, region: str) -> float | None:
+        """Return the share of the table's regions, in percent, that fewer studies hit; ties count half.
+
+        Parameters
+        ----------
+        region : str
+            By its name in the table.
+
+        Returns
+        -------
+        float or None
+            0 to 100; None where the table has fewer than 20 regions, too few for a percentile.
+        """
+        if len(self._rows) < _FEWEST_REGIONS:
+            return None
+        hits = {name: max(row.term_active + row.other_active for row in rows) for name, rows in self._rows.items()}
+        here = hits[region]
+        below = sum(other < here for other in hits.values())
+        equal = sum(other == here for other in hits.values())
+        return 100 * (below + equal / 2) / len(hits)
 
     def term_totals(self) -> dict[str, int]:
         """Return the largest number of studies behind each term, by term, sorted."""

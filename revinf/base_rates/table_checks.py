@@ -68,9 +68,7 @@ class TableChecks:
             self.first[row.region] = row
             other = self.spelling.setdefault(region_key(row.region), row.region)
             if other != row.region:
-                raise self._error(
-                    line, "region", f"{row.region!r} also stands as {other!r}; write it one way"
-                )
+                raise self._error(line, "region", f"{row.region!r} also stands as {other!r}; write it one way")
         elif (row.centre, row.radius_mm) != (first.centre, first.radius_mm):
             raise self._error(
                 line,

@@ -12,6 +12,7 @@ from revinf.cli.check import check
 from revinf.cli.demo import demo
 from revinf.cli.inspect import inspect
 from revinf.cli.one_line import LineGroup, PeakCommand
+from revinf.cli.profile import profile
 from revinf.cli.tabulate import tabulate
 from revinf.cli.terms import terms
 
@@ -47,6 +48,7 @@ def _main(
 
 
 app.command(cls=PeakCommand)(check)
+app.command(cls=PeakCommand)(profile)
 app.command()(build)
 app.command()(inspect)
 app.command()(terms)

@@ -29,9 +29,7 @@ def build(
     ],
     out: Annotated[
         Path,
-        typer.Option(
-            "--out", metavar="FOLDER", help="The literature to make; an older one there is replaced."
-        ),
+        typer.Option("--out", metavar="FOLDER", help="The literature to make; an older one there is replaced."),
     ],
     studies: Annotated[
         Path | None,
@@ -54,9 +52,7 @@ def build(
     ] = None,
     sign: Annotated[
         str,
-        typer.Option(
-            "--sign", metavar="SIGN", help="Which peaks count by their stat: all, positive, negative."
-        ),
+        typer.Option("--sign", metavar="SIGN", help="Which peaks count by their stat: all, positive, negative."),
     ] = "all",
     min_weight: Annotated[
         float | None,
@@ -91,9 +87,7 @@ def build(
     ] = None,
     study_is: Annotated[
         str,
-        typer.Option(
-            "--study-is", metavar="WORD", help="What one study is, in the plural: experiments, papers."
-        ),
+        typer.Option("--study-is", metavar="WORD", help="What one study is, in the plural: experiments, papers."),
     ] = "studies",
     source: Annotated[
         str, typer.Option("--source", metavar="TEXT", help="Where the data come from.", show_default=False)

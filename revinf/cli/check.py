@@ -3,18 +3,26 @@
 from __future__ import annotations
 
 import os
-from pathlib import Path
 from typing import Annotated
 
 import typer
 
 from revinf.cli.options import (
     AsJson,
+    EveryRival,
+    FigureFile,
     KindsFile,
+    Level,
     LiteratureFolder,
+    MaskFile,
     Peaks,
     Radius,
+    RatioPriorLimit,
+    RatioPriorName,
+    RegionName,
+    Space,
     TableFile,
+    ThresholdsFile,
     Transform,
     parsed_peaks,
 )
@@ -28,21 +36,8 @@ def check(
         typer.Option("--term", metavar="TERM", help="The process that the activity is taken as a sign of."),
     ],
     peak: Peaks = None,
-    mask: Annotated[
-        Path | None,
-        typer.Option(
-            "--mask",
-            metavar="FILE",
-            help="An image in MNI152 whose non-zero voxels are the region.",
-            show_default=False,
-        ),
-    ] = None,
-    region: Annotated[
-        str | None,
-        typer.Option(
-            "--region", metavar="NAME", help="A region of the table, by its name.", show_default=False
-        ),
-    ] = None,
+    mask: MaskFile = None,
+    region: RegionName = None,
     literature: LiteratureFolder = None,
     table: TableFile = None,
     prior: Annotated[
@@ -54,33 +49,49 @@ def check(
         ),
     ] = "0.5",
     radius: Radius = 10.0,
-    space: Annotated[
-        str, typer.Option("--space", metavar="NAME", help="Space of the peak: MNI152 or Talairach.")
-    ] = "MNI152",
+    space: Space = None,
     transform: Transform = "pooled",
-    level: Annotated[
-        float, typer.Option("--level", metavar="P", help="Probability that each interval holds.")
-    ] = 0.95,
-    ratio_prior: Annotated[
-        str,
-        typer.Option("--ratio-prior", metavar="NAME", help="Prior of the two rates: shared or independent."),
-    ] = "shared",
-    ratio_prior_limit: Annotated[
-        float,
+    absent: Annotated[
+        bool, typer.Option("--absent", help="The claim rests on NO activity there: count the studies without.")
+    ] = False,
+    context: Annotated[
+        list[str] | None,
         typer.Option(
-            "--ratio-prior-limit",
-            metavar="R",
-            help="The shared prior puts 95 % of the ratio between 1/R and R.",
+            "--context",
+            metavar="TERM",
+            help="Count again within the studies that carry this term. Repeatable: any of them.",
+            show_default=False,
         ),
-    ] = 20.0,
+    ] = None,
+    rival: Annotated[
+        list[str] | None,
+        typer.Option(
+            "--rival", metavar="TERM", help="Show this rival in any case. Repeatable.", show_default=False
+        ),
+    ] = None,
+    exclude: Annotated[
+        list[str] | None,
+        typer.Option(
+            "--exclude", metavar="TERM", help="Never count this term as a rival. Repeatable.", show_default=False
+        ),
+    ] = None,
+    level: Level = 0.95,
+    ratio_prior: RatioPriorName = "shared",
+    ratio_prior_limit: RatioPriorLimit = 20.0,
     kinds: KindsFile = None,
+    thresholds: ThresholdsFile = None,
+    every_rival: EveryRival = False,
+    figure: FigureFile = None,
     as_json: AsJson = False,
 ) -> None:
     """Check one claim: how much does activity in a place say about a process?
 
+    Several peaks form a pattern: the studies that hit all of them are counted.
+
     Example: revinf check --peak 54 -54 24 --term "theory of mind"
     """
-    from revinf.evidence.assess import assess, choices_of
+    from revinf.evidence.assess import assess
+    from revinf.evidence.choices import choices_of
     from revinf.evidence.claim import Claim, parsed_prior
     from revinf.evidence.sources import choose_source
 
@@ -92,10 +103,25 @@ def check(
         radius_mm=radius,
         space=space,
         transform=transform,
+        absent=absent,
         prior=parsed_prior(prior),
+        context=context or (),
+        rivals=rival or (),
+        excluded=exclude or (),
     )
-    choices = choices_of(level=level, ratio_prior=ratio_prior, ratio_limit=ratio_prior_limit, kinds=kinds)
+    choices = choices_of(
+        level=level,
+        ratio_prior=ratio_prior,
+        ratio_limit=ratio_prior_limit,
+        kinds=kinds,
+        thresholds=thresholds,
+        every_rival=every_rival,
+    )
     assessment = assess(claim, choose_source(literature, table, os.environ), choices)
+    if figure is not None:
+        from revinf.reports.robustness_figure import write_robustness_figure
+
+        write_robustness_figure(assessment, figure)
     if as_json:
         from revinf.reports.machine import print_json
 

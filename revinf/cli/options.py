@@ -11,12 +11,21 @@ from revinf.exceptions import InvalidClaimError
 
 __all__ = [
     "AsJson",
+    "EveryRival",
+    "FigureFile",
     "KindsFile",
+    "Level",
     "LiteratureFolder",
+    "MaskFile",
     "NamedColumns",
     "Peaks",
     "Radius",
+    "RatioPriorLimit",
+    "RatioPriorName",
+    "RegionName",
+    "Space",
     "TableFile",
+    "ThresholdsFile",
     "Transform",
     "parsed_columns",
     "parsed_peaks",
@@ -46,7 +55,7 @@ Peaks = Annotated[
     typer.Option(
         "--peak",
         metavar="X Y Z",
-        help="A peak in mm; negative numbers as typed: --peak -24 -4 -18.",
+        help="A peak in mm; negative numbers as typed: --peak -24 -4 -18. Repeatable: several form a pattern.",
         show_default=False,
     ),
 ]
@@ -54,8 +63,60 @@ Radius = Annotated[
     float,
     typer.Option("--radius", metavar="MM", help="Radius of the sphere around a peak, 0 to 200 mm."),
 ]
-AsJson = Annotated[
-    bool, typer.Option("--json", help="Print JSON for a machine instead of a screen for a person.")
+AsJson = Annotated[bool, typer.Option("--json", help="Print JSON for a machine instead of a screen for a person.")]
+MaskFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--mask",
+        metavar="FILE",
+        help="An image in MNI152 whose non-zero voxels are the region.",
+        show_default=False,
+    ),
+]
+RegionName = Annotated[
+    str | None,
+    typer.Option("--region", metavar="NAME", help="A region of the table, by its name.", show_default=False),
+]
+Space = Annotated[
+    str | None,
+    typer.Option(
+        "--space",
+        metavar="NAME",
+        help="Space of the peak: MNI152 or Talairach. [default: MNI152, not stated]",
+        show_default=False,
+    ),
+]
+Level = Annotated[float, typer.Option("--level", metavar="P", help="Probability that each interval holds.")]
+RatioPriorName = Annotated[
+    str,
+    typer.Option("--ratio-prior", metavar="NAME", help="Prior of the two rates: shared or independent."),
+]
+RatioPriorLimit = Annotated[
+    float,
+    typer.Option(
+        "--ratio-prior-limit",
+        metavar="R",
+        help="The shared prior puts 95 % of the ratio between 1/R and R.",
+    ),
+]
+ThresholdsFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--thresholds",
+        metavar="FILE",
+        help="Your own beginnings of the cautions, as TOML lines such as thin_weigh = 10.",
+        show_default=False,
+    ),
+]
+EveryRival = Annotated[bool, typer.Option("--all", help="List all rivals in the JSON instead of the first 20.")]
+FigureFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--figure",
+        metavar="FILE",
+        help="Write the picture to this file: .png, .svg or .pdf.",
+        show_default=False,
+    ),
 ]
 KindsFile = Annotated[
     Path | None,

@@ -1,114 +1,40 @@
-"""`assess`: the order of the steps from a claim to its assessment; the mathematics is in `revinf.stats`."""
+"""`assess`: the order of the steps from a claim to its assessment, and nothing else."""
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field, replace
-from pathlib import Path
+from dataclasses import replace
 
-from revinf.base_rates.counting import TermCounts
 from revinf.base_rates.table import BaseRateTable
-from revinf.evidence.assessment import (
-    AssessedClaim,
-    Assessment,
-    Association,
-    LikelihoodRatio,
-    Posterior,
-    Rates,
-    RequiredPrior,
-)
+from revinf.evidence.assessment import Assessment
+from revinf.evidence.breadth import breadth_of
 from revinf.evidence.cautions.registry import cautions_of
-from revinf.evidence.cautions.thresholds import Thresholds
+from revinf.evidence.choices import Choices, choices_of
 from revinf.evidence.claim import Claim
-from revinf.evidence.grading import direction_of, grade_of, headline_grade
-from revinf.evidence.sources import Answer, LiteratureSource, Source, TableSource
-from revinf.evidence.vocabulary import Vocabulary, chosen_vocabulary, shipped_vocabulary
+from revinf.evidence.contrasts import (
+    context_of,
+    mirror_of,
+    pattern_of,
+    reporting_volume,
+)
+from revinf.evidence.judging import associate, grade, rates_of, required_priors, update
+from revinf.evidence.parts import AssessedClaim
+from revinf.evidence.ratio_settings import RatioSettings
+from revinf.evidence.robustness import Asked, robustness_of
+from revinf.evidence.selectivity import RivalRequest, select
+from revinf.evidence.sources import Answer, LiteratureSource, Source, as_source
+from revinf.evidence.unevenness import unevenness_of
+from revinf.evidence.vocabulary import Vocabulary, shipped_vocabulary
 from revinf.exceptions import InvalidClaimError, UnknownTermError
-from revinf.literature.literature import Literature, unknown_term
-from revinf.stats.association import benjamini_hochberg, fisher_p
-from revinf.stats.bayes import observed_posterior, posterior_estimate, prevalence, required_prior
-from revinf.stats.estimates import Counts, Estimate, check_level
-from revinf.stats.rates import jeffreys_rates
-from revinf.stats.ratio import DEFAULT_LIMIT, RatioPrior, likelihood_ratio, observed_ratio
+from revinf.literature.literature import Literature
+from revinf.literature.unknown_terms import unknown_term
+from revinf.spaces.coordinates import to_tenths
+from revinf.stats.bayes import prevalence
+from revinf.stats.estimates import Counts
 
-__all__ = ["TARGETS", "Choices", "assess", "choices_of"]
-
-TARGETS = (0.80, 0.95)
-"""Posteriors for which the required prior is told."""
+__all__ = ["Choices", "assess", "choices_of"]
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Choices:
-    """How an assessment is made, apart from the claim itself.
-
-    Parameters
-    ----------
-    level : float, probability
-        Posterior probability that each interval holds.
-    ratio_prior : {"shared", "independent"}
-        Prior of the two rates behind the likelihood ratio.
-    ratio_limit : float
-        95 % of the shared prior lies between 1/limit and limit.
-    vocabulary : Vocabulary, optional
-        Kinds and domains of terms; the shipped ones where left out.
-    thresholds : Thresholds
-        Where cautions begin.
-    """
-
-    level: float = 0.95
-    ratio_prior: RatioPrior = "shared"
-    ratio_limit: float = DEFAULT_LIMIT
-    vocabulary: Vocabulary | None = None
-    thresholds: Thresholds = field(default_factory=Thresholds)
-
-
-def choices_of(
-    *, level: float, ratio_prior: str, ratio_limit: float, kinds: str | Path | None = None
-) -> Choices:
-    """Return choices as somebody typed them, checked.
-
-    Parameters
-    ----------
-    level : float, probability
-        Posterior probability that each interval holds.
-    ratio_prior : str
-        "shared" or "independent".
-    ratio_limit : float, ratio > 1
-        Limit of the shared prior.
-    kinds : path, optional
-        A table of kinds, domains and synonyms.
-
-    Returns
-    -------
-    Choices
-        Checked.
-
-    Raises
-    ------
-    InvalidClaimError
-        If the prior's name is unknown.
-    InputFileError
-        If the table of kinds cannot be used.
-
-    Examples
-    --------
-    >>> choices_of(level=0.9, ratio_prior="shared", ratio_limit=20).level
-    0.9
-    """
-    if ratio_prior not in ("shared", "independent"):
-        raise InvalidClaimError(
-            f"ratio prior must be shared or independent, but got {ratio_prior!r}; use shared"
-        )
-    return Choices(
-        level=check_level(level),
-        ratio_prior="shared" if ratio_prior == "shared" else "independent",
-        ratio_limit=ratio_limit,
-        vocabulary=chosen_vocabulary(kinds),
-    )
-
-
-def assess(
-    claim: Claim, source: Literature | BaseRateTable | Source, choices: Choices | None = None
-) -> Assessment:
+def assess(claim: Claim, source: Literature | BaseRateTable | Source, choices: Choices | None = None) -> Assessment:
     """Assess one claim against the base rates of a source.
 
     Parameters
@@ -123,7 +49,7 @@ def assess(
     Returns
     -------
     Assessment
-        Counts, rates, likelihood ratio, posteriors, required priors and cautions.
+        Counts, rates, likelihood ratio, posteriors, rivals, breadth, robustness and cautions.
 
     Raises
     ------
@@ -149,47 +75,83 @@ def assess(
     """
     choices = choices or Choices()
     words = choices.vocabulary or shipped_vocabulary()
-    asked = _as_source(source)
-    answer = asked.answer(claim)
+    asked = as_source(source)
+    answer = asked.answer(claim, absent=claim.absent)
     counts, position = _claimed(claim.term, answer, asked, words)
-    share = prevalence(counts)
-    ratio = likelihood_ratio(
-        counts, level=choices.level, prior=choices.ratio_prior, limit=choices.ratio_limit
-    )
+    settings = RatioSettings(level=choices.level, ratio_prior=choices.ratio_prior, ratio_limit=choices.ratio_limit)
+    ratio, share = settings.solve(counts), prevalence(counts)
     if ratio is None or share is None:
         raise InvalidClaimError(
             f"every counted study carries {claim.term!r}, so there is nothing to compare with; use a wider "
             "literature"
         )
     prior = share if claim.prior == "prevalence" else float(claim.prior)
+    selectivity = select(
+        position,
+        answer.counts,
+        answer.studies,
+        words,
+        RivalRequest(
+            named=tuple(claim.rivals),
+            excluded=tuple(claim.excluded),
+            shown=choices.shown_rivals,
+            prior=prior,
+        ),
+        settings,
+    )
     assessment = Assessment(
         claim=_assessed(claim, answer, prior),
         place=answer.place,
         literature=asked.facts,
         counts=counts,
-        rates=_rates(counts, choices.level),
-        likelihood_ratio=_graded(counts, ratio),
-        posterior=_posterior(counts, ratio, prior),
-        posterior_at_prevalence=_posterior(counts, ratio, share),
-        required_prior=tuple(
-            RequiredPrior(
-                target=target,
-                estimate=required_prior(target, ratio.estimate),
-                at_low=required_prior(target, ratio.low),
-            )
-            for target in TARGETS
+        rates=rates_of(counts, choices.level),
+        likelihood_ratio=grade(counts, ratio),
+        posterior=update(counts, ratio, prior),
+        posterior_at_prevalence=update(counts, ratio, share),
+        required_prior=required_priors(ratio),
+        association=associate(answer.counts, position, words),
+        selectivity=selectivity,
+        breadth=breadth_of(answer, words, level=choices.level),
+        unevenness=unevenness_of(answer.counts, words),
+        robustness=robustness_of(
+            Asked(claim=claim, counts=counts, prior=prior, settings=settings),
+            asked,
+            answer,
+            selectivity.kin_positions,
         ),
-        association=_association(answer.counts, position, words),
         level=choices.level,
     )
-    return replace(assessment, cautions=cautions_of(assessment, answer.counts, words, choices.thresholds))
+    assessment = _contrasted(assessment, claim, asked, answer, settings)
+    return replace(assessment, cautions=cautions_of(assessment, claim, words, choices.thresholds))
 
 
-def _as_source(source: Literature | BaseRateTable | Source) -> Source:
-    """Return the common face of whatever was given."""
-    if isinstance(source, Literature):
-        return LiteratureSource(source)
-    return TableSource(source) if isinstance(source, BaseRateTable) else source
+def _contrasted(
+    assessment: Assessment, claim: Claim, asked: Source, answer: Answer, settings: RatioSettings
+) -> Assessment:
+    """Add what needs the studies themselves."""
+    studies = answer.studies
+    if studies is None or not isinstance(asked, LiteratureSource):
+        if claim.context:
+            raise InvalidClaimError("a context needs the studies themselves; use a literature, not a table")
+        return assessment
+    single, joint = len(claim.peaks) == 1, assessment.likelihood_ratio.value
+    own = (
+        [study for study in _own_studies(claim, asked) if studies.carries(claim.term)[study]] if claim.peaks else []
+    )
+    return replace(
+        assessment,
+        reporting_volume=reporting_volume(claim.term, studies, assessment.counts, settings),
+        context=context_of(claim.term, claim.context, studies, settings) if claim.context else None,
+        mirror=mirror_of(claim, asked, studies, settings) if single and claim.mni_peaks()[0][0] else None,
+        pattern=pattern_of(claim, asked, joint, answer.hits, settings) if len(claim.peaks) > 1 else None,
+        own_studies=tuple(asked.literature.study_ids[study] for study in own),
+    )
+
+
+def _own_studies(claim: Claim, asked: LiteratureSource) -> list[int]:
+    """Return the studies that report exactly the claim's peaks."""
+    found: list[int] = asked.literature.studies_reporting(to_tenths(claim.mni_peaks())).tolist()
+    return found
 
 
 def _claimed(term: str, answer: Answer, source: Source, words: Vocabulary) -> tuple[Counts, int]:
@@ -217,69 +179,11 @@ def _assessed(claim: Claim, answer: Answer, prior: float) -> AssessedClaim:
         term=claim.term,
         region_kind=answer.region_kind,
         peaks=tuple((x, y, z) for x, y, z in claim.peaks),
-        space=claim.space,
+        space=str(claim.space),
         radius_mm=answer.radius_mm,
         prior=prior,
+        absent=claim.absent,
+        context=tuple(claim.context),
         quote=claim.quote,
         location=claim.location,
     )
-
-
-def _rates(counts: Counts, level: float) -> Rates:
-    """Return the four rates of formula 1."""
-    term, other, activation, share = jeffreys_rates(
-        [
-            (counts.term_active, counts.term_total),
-            (counts.other_active, counts.other_total),
-            (counts.active_total, counts.total),
-            (counts.term_total, counts.total),
-        ],
-        level=level,
-    )
-    return Rates(active_given_term=term, active_given_other=other, activation=activation, prevalence=share)
-
-
-def _graded(counts: Counts, ratio: Estimate) -> LikelihoodRatio:
-    """Return the ratio with its direction and grades."""
-    return LikelihoodRatio(
-        value=ratio,
-        observed=observed_ratio(counts),
-        direction=direction_of(ratio),
-        headline_grade=headline_grade(ratio),
-        estimate_grade=grade_of(ratio.estimate),
-    )
-
-
-def _posterior(counts: Counts, ratio: Estimate, prior: float) -> Posterior:
-    """Return the posterior at a prior."""
-    value = posterior_estimate(prior, ratio)
-    if value is None:
-        raise InvalidClaimError("there is no likelihood ratio to update a prior with")
-    return Posterior(
-        value=value,
-        # At the prevalence exactly n11 / (n11 + n01), without a rounding error from the prior.
-        observed=observed_posterior(counts, None if prior == prevalence(counts) else prior),
-        prior=prior,
-    )
-
-
-def _association(counts: TermCounts, claimed: int, words: Vocabulary) -> Association:
-    """Return Fisher's p of the claimed term and its q over the process terms, itself among them."""
-    family = [
-        position
-        for position, term in enumerate(counts.terms)
-        if position == claimed or (counts.term_total[position] and words.counts_as_process(term))
-    ]
-    solved: dict[Counts, float | None] = {}
-    p_values = {}
-    for position in family:
-        table = counts.at(position)
-        if table not in solved:
-            solved[table] = fisher_p(table)
-        p = solved[table]
-        if p is not None:
-            p_values[position] = p
-    if claimed not in p_values:
-        return Association(fisher_p=None, q=None)
-    q_values = benjamini_hochberg(list(p_values.values()))
-    return Association(fisher_p=p_values[claimed], q=float(q_values[list(p_values).index(claimed)]))

@@ -8,141 +8,33 @@ from __future__ import annotations
 from dataclasses import asdict, dataclass, field
 from typing import TYPE_CHECKING, Any
 
+from revinf.evidence.breadth import Breadth
 from revinf.evidence.cautions.caution import Caution
-from revinf.evidence.claim import Point
-from revinf.evidence.grading import Direction
+from revinf.evidence.contrasts import Context, Mirror, Pattern, ReportingVolume
+from revinf.evidence.parts import (
+    AssessedClaim,
+    Association,
+    LikelihoodRatio,
+    LiteratureFacts,
+    Place,
+    Posterior,
+    Rates,
+    RequiredPrior,
+    plain,
+)
+from revinf.evidence.robustness import Robustness
+from revinf.evidence.selectivity import Selectivity
+from revinf.evidence.unevenness import Unevenness
 from revinf.evidence.verdict import verdict
 from revinf.knowledge import VERSION
-from revinf.stats.estimates import Counts, Estimate
+from revinf.stats.estimates import Counts
 
 if TYPE_CHECKING:
     import pandas as pd
 
-__all__ = [
-    "SCHEMA",
-    "AssessedClaim",
-    "Assessment",
-    "Association",
-    "LikelihoodRatio",
-    "LiteratureFacts",
-    "Nearest",
-    "Place",
-    "Posterior",
-    "Rates",
-    "RequiredPrior",
-    "TablePlace",
-]
+__all__ = ["SCHEMA", "Assessment"]
 
 SCHEMA = "revinf/assessment/1"
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class AssessedClaim:
-    """The claim as it was assessed: peaks in mm as given, prior as a probability."""
-
-    id: str
-    term: str
-    region_kind: str
-    peaks: tuple[Point, ...]
-    space: str
-    radius_mm: float | None
-    prior: float
-    context: tuple[str, ...] = ()
-    quote: str = ""
-    location: str = ""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Nearest:
-    """The nearest labelled point of a published set, within 6 mm."""
-
-    label: str
-    distance_mm: float
-    source: str
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class TablePlace:
-    """The region of a base-rate table that answered for a peak."""
-
-    region: str
-    centre: Point
-    distance_mm: float
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Place:
-    """Where the region is, in words; `outside_mm` and `grey_mm` are distances to brain and grey matter."""
-
-    hemisphere: str | None
-    tissue: str | None
-    nearest: Nearest | None
-    words: str
-    outside_mm: float | None = None
-    grey_mm: float | None = None
-    table_region: TablePlace | None = None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class LiteratureFacts:
-    """Where the counts come from; `merged` is None where it is not known."""
-
-    name: str
-    n_studies: int
-    n_peaks: int | None
-    n_terms: int
-    study_is: str
-    invented: bool
-    fingerprint: str
-    kind: str = "literature"
-    merged: bool | None = None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Rates:
-    """The four rates of formula 1."""
-
-    active_given_term: Estimate | None
-    active_given_other: Estimate | None
-    activation: Estimate | None
-    prevalence: Estimate | None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class LikelihoodRatio:
-    """The ratio with its direction and grades."""
-
-    value: Estimate
-    observed: float | None
-    direction: Direction
-    headline_grade: str | None
-    estimate_grade: str
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Posterior:
-    """A posterior at a stated prior."""
-
-    value: Estimate
-    observed: float | None
-    prior: float
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class RequiredPrior:
-    """The prior one must have held for a target posterior."""
-
-    target: float
-    estimate: float
-    at_low: float
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Association:
-    """Fisher's exact p and its false-discovery q over the process terms."""
-
-    fisher_p: float | None
-    q: float | None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -159,6 +51,15 @@ class Assessment:
     posterior_at_prevalence: Posterior
     required_prior: tuple[RequiredPrior, ...]
     association: Association
+    selectivity: Selectivity
+    breadth: Breadth
+    unevenness: Unevenness
+    robustness: Robustness
+    reporting_volume: ReportingVolume | None = None
+    context: Context | None = None
+    mirror: Mirror | None = None
+    pattern: Pattern | None = None
+    own_studies: tuple[str, ...] = ()
     level: float = 0.95
     cautions: tuple[Caution, ...] = field(default_factory=tuple)
 
@@ -170,6 +71,7 @@ class Assessment:
             self.likelihood_ratio.direction,
             self.likelihood_ratio.headline_grade,
             [caution.severity for caution in self.cautions],
+            absent=self.claim.absent,
         )
 
     def __repr__(self) -> str:
@@ -190,26 +92,13 @@ class Assessment:
         dict
             Strict JSON types; what could not be computed is None.
         """
-        ratio = self.likelihood_ratio
-        nearest, table_region = self.place.nearest, self.place.table_region
-        place: dict[str, Any] = {
-            "hemisphere": self.place.hemisphere,
-            "tissue": self.place.tissue,
-            "nearest": asdict(nearest) if nearest else None,
-            "words": self.place.words,
-        }
-        if table_region is not None:
-            place["table_region"] = _plain(asdict(table_region))
-        facts = self.literature
+        ratio, chosen = self.likelihood_ratio, self.selectivity
         return {
             "schema": SCHEMA,
             "version": VERSION,
-            "claim": _plain(asdict(self.claim)),
-            "place": place,
-            "literature": {
-                name: getattr(facts, name)
-                for name in ("name", "n_studies", "n_peaks", "n_terms", "study_is", "invented", "fingerprint")
-            },
+            "claim": plain(asdict(self.claim)),
+            "place": self.place.to_dict(),
+            "literature": self.literature.to_dict(),
             "counts": asdict(self.counts),
             "rates": asdict(self.rates),
             "likelihood_ratio": {
@@ -226,8 +115,17 @@ class Assessment:
                 for item in self.required_prior
             },
             "association": asdict(self.association),
-            # What needs rivals, breadth, contexts and other choices is not computed yet.
-            **dict.fromkeys(_NOT_COMPUTED),
+            "selectivity": chosen.to_dict(),
+            "breadth": asdict(self.breadth),
+            "reporting_volume": _optional(self.reporting_volume),
+            "context": _optional(self.context),
+            "mirror": _optional(self.mirror),
+            "pattern": _optional(self.pattern),
+            # The comparison in which every process counts once comes with the calibration of a literature.
+            "balanced_ratio": None,
+            "rivals": [asdict(rival) for rival in chosen.rivals],
+            "kin": [asdict(rival) for rival in chosen.kin],
+            "robustness": self.robustness.to_dict(),
             "cautions": [caution.to_dict() for caution in self.cautions],
             "wording": self.wording,
         }
@@ -238,31 +136,21 @@ class Assessment:
         Returns
         -------
         pandas.DataFrame
-            One row; cautions are their codes, joined by ``;``.
+            One row; cautions are their codes and rivals their terms, joined by ``;``. The rows of
+            robustness, rivals and kin are in `to_dict`.
         """
         import pandas as pd
 
         content = self.to_dict()
         content["cautions"] = ";".join(caution.code for caution in self.cautions)
-        content["claim"]["peaks"] = ";".join(
-            " ".join(f"{value:g}" for value in peak) for peak in self.claim.peaks
-        )
+        for name in ("rivals", "kin"):
+            content[name] = ";".join(row["term"] for row in content[name])
+        content["claim"]["peaks"] = ";".join(" ".join(f"{value:g}" for value in peak) for peak in self.claim.peaks)
         content["claim"]["context"] = ";".join(self.claim.context)
+        content["robustness"].pop("rows")
+        if content["pattern"] is not None:
+            content["pattern"].pop("regions")
         return pd.json_normalize(content)
-
-
-_NOT_COMPUTED = (
-    "selectivity",
-    "breadth",
-    "reporting_volume",
-    "context",
-    "mirror",
-    "pattern",
-    "balanced_ratio",
-    "rivals",
-    "kin",
-    "robustness",
-)
 
 
 def _posterior(posterior: Posterior) -> dict[str, float | None]:
@@ -270,10 +158,6 @@ def _posterior(posterior: Posterior) -> dict[str, float | None]:
     return {**asdict(posterior.value), "observed": posterior.observed, "prior": posterior.prior}
 
 
-def _plain(value: Any) -> Any:
-    """Return nested tuples as lists, as JSON reads them back."""
-    if isinstance(value, dict):
-        return {name: _plain(item) for name, item in value.items()}
-    if isinstance(value, (list, tuple)):
-        return [_plain(item) for item in value]
-    return value
+def _optional(part: Any) -> Any:
+    """Return a part as plain data, or None."""
+    return None if part is None else plain(asdict(part))

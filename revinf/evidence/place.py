@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
-from revinf.evidence.assessment import Nearest, Place, TablePlace
-from revinf.evidence.claim import Point
+from collections.abc import Sequence
+
+from revinf.evidence.asked_region import Point
+from revinf.evidence.parts import Nearest, Place, TablePlace
 from revinf.spaces.brain import (
     BrainReference,
     distance_outside_mm,
@@ -15,7 +17,9 @@ from revinf.spaces.brain import (
 )
 from revinf.spaces.regions import Mask
 
-__all__ = ["place_of_mask", "place_of_peak"]
+__all__ = ["place_of_mask", "place_of_pattern", "place_of_peak"]
+
+_WORST_FIRST = ("outside", "other brain", "white matter", "grey matter")
 
 
 def place_of_peak(brain: BrainReference, peak: Point, table_region: TablePlace | None = None) -> Place:
@@ -68,7 +72,30 @@ def place_of_mask(mask: Mask) -> Place:
         tissue=None,
         nearest=None,
         words=(
-            f"mask {mask.name}, {int(mask.ijk_inside.sum())} voxels, centre of gravity "
-            f"({x:.0f}, {y:.0f}, {z:.0f})"
+            f"mask {mask.name}, {int(mask.ijk_inside.sum())} voxels, centre of gravity ({x:.0f}, {y:.0f}, {z:.0f})"
         ),
+    )
+
+
+def place_of_pattern(places: Sequence[Place]) -> Place:
+    """Return what can be said of several places together.
+
+    Parameters
+    ----------
+    places : sequence of Place
+        One a peak.
+
+    Returns
+    -------
+    Place
+        The side where all share it, the words of all; tissue and distances of the worst.
+    """
+    sides = {place.hemisphere for place in places}
+    return Place(
+        hemisphere=sides.pop() if len(sides) == 1 else None,
+        tissue=next((name for name in _WORST_FIRST if any(place.tissue == name for place in places)), None),
+        nearest=None,
+        words=" | ".join(place.words for place in places),
+        outside_mm=max(place.outside_mm or 0.0 for place in places),
+        grey_mm=max(place.grey_mm or 0.0 for place in places),
     )

@@ -1,24 +1,31 @@
-"""One face for the sources of counts: a literature or a base-rate table, asked for one claim."""
+"""One face for the sources of counts: a literature or a base-rate table, asked for one region."""
 
 from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import reduce
 from pathlib import Path
 from typing import Protocol
 
-from revinf.base_rates.counting import TermCounts, count_terms
-from revinf.base_rates.table import BaseRateTable
-from revinf.evidence.assessment import LiteratureFacts, Place, TablePlace
-from revinf.evidence.claim import Claim
-from revinf.evidence.place import place_of_mask, place_of_peak
+import numpy as np
+from numpy.typing import NDArray
+
+from revinf.base_rates.counting import TermCounts, count_hits
+from revinf.base_rates.study_level import StudyLevel
+from revinf.base_rates.table import BaseRateTable, TableRegion
+from revinf.evidence.asked_region import DEFAULT_RADIUS_MM, AskedRegion
+from revinf.evidence.parts import LiteratureFacts, Place, TablePlace
+from revinf.evidence.place import place_of_mask, place_of_pattern, place_of_peak
 from revinf.exceptions import InvalidClaimError
 from revinf.knowledge import table_path
+from revinf.literature.background import Background
 from revinf.literature.literature import Literature
 from revinf.spaces.reference import brain_reference
-from revinf.spaces.regions import load_mask
+from revinf.spaces.regions import Mask, load_mask
+from revinf.spaces.spheres import Sphere
 
-__all__ = ["ENVIRONMENT", "Answer", "LiteratureSource", "Source", "TableSource", "choose_source"]
+__all__ = ["ENVIRONMENT", "Answer", "LiteratureSource", "Source", "TableSource", "as_source", "choose_source"]
 
 ENVIRONMENT = "REVINF_LITERATURE"
 """Environment variable that names the literature to use where none is given."""
@@ -26,7 +33,7 @@ ENVIRONMENT = "REVINF_LITERATURE"
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Answer:
-    """What a source says of a claim's region.
+    """What a source says of a region.
 
     Parameters
     ----------
@@ -38,24 +45,36 @@ class Answer:
         "sphere", "mask" or "table".
     radius_mm : float or None, mm
         Radius of the sphere that was counted.
+    hits : int
+        Studies that count as active.
+    studies : StudyLevel or None
+        The studies themselves; a table does not have them.
+    background : Background or None
+        Hits of the same sphere all over the grey matter.
+    percentile : float or None
+        Activation percentile among the table's other regions.
     """
 
     counts: TermCounts
     place: Place
     region_kind: str
     radius_mm: float | None
+    hits: int
+    studies: StudyLevel | None = None
+    background: Background | None = None
+    percentile: float | None = None
 
 
 class Source(Protocol):
-    """Anything that can be asked for the counts of a claim's region."""
+    """Anything that can be asked for the counts of a region."""
 
     @property
     def facts(self) -> LiteratureFacts:
         """What the source is."""
         ...
 
-    def answer(self, claim: Claim) -> Answer:
-        """Count for a claim."""
+    def answer(self, region: AskedRegion, *, absent: bool = False) -> Answer:
+        """Count for a region."""
         ...
 
 
@@ -68,7 +87,7 @@ class LiteratureSource:
     @property
     def facts(self) -> LiteratureFacts:
         """What the literature is."""
-        description = self.literature.description
+        description, manifest = self.literature.description, self.literature.manifest
         return LiteratureFacts(
             name=description.name,
             n_studies=self.literature.n_studies,
@@ -77,30 +96,50 @@ class LiteratureSource:
             study_is=description.study_is,
             invented=description.invented,
             fingerprint=self.literature.fingerprint,
-            merged=self.literature.manifest.merged_by is not None,
+            merged=manifest.merged_by is not None,
+            negative_peaks=manifest.counts.get("negative_peaks", 0),
         )
 
-    def answer(self, claim: Claim) -> Answer:
-        """Count the studies that hit the claim's sphere or mask."""
-        if claim.region is not None:
+    def region_hits(self, region: AskedRegion) -> list[NDArray[np.int64]]:
+        """Return, for each place of a region, the indices of the studies that hit it."""
+        if region.region is not None:
             raise InvalidClaimError(
-                f"region {claim.region!r} names a place of a table; a literature needs a peak or a mask"
+                f"region {region.region!r} names a place of a table; a literature needs a peak or a mask"
             )
-        if claim.mask is not None:
-            mask = load_mask(Path(claim.mask))
-            return Answer(
-                counts=count_terms(self.literature, mask),
-                place=place_of_mask(mask),
-                region_kind="mask",
-                radius_mm=None,
-            )
-        peak = claim.mni_peaks()[0]
+        places: list[Sphere | Mask] = [region.sphere_at(peak) for peak in region.mni_peaks()]
+        if region.mask is not None:
+            places = [load_mask(Path(region.mask))]
+        return [self.literature.studies_hitting(place) for place in places]
+
+    def studies(self, region: AskedRegion, *, absent: bool = False) -> StudyLevel:
+        """Return the studies with those marked that hit every place, or, if `absent`, none of them."""
+        hits = self.region_hits(region)
+        if absent:
+            everyone = np.arange(self.literature.n_studies)
+            return StudyLevel(self.literature, np.setdiff1d(everyone, reduce(np.union1d, hits)))
+        return StudyLevel(self.literature, reduce(np.intersect1d, hits))
+
+    def answer(self, region: AskedRegion, *, absent: bool = False) -> Answer:
+        """Count the studies that hit all spheres of a region, or its mask."""
+        studies = self.studies(region, absent=absent)
+        hits = np.flatnonzero(studies.is_hit)
+        single = len(region.peaks) == 1
         return Answer(
-            counts=count_terms(self.literature, claim.sphere_at(peak)),
-            place=place_of_peak(self.literature.brain, peak),
-            region_kind="sphere",
-            radius_mm=claim.radius_mm,
+            counts=count_hits(self.literature, hits),
+            place=self._place(region),
+            region_kind="sphere" if region.mask is None else "mask",
+            radius_mm=region.radius_mm if region.mask is None else None,
+            hits=len(hits),
+            studies=studies,
+            background=self.literature.background(region.radius_mm) if single and not absent else None,
         )
+
+    def _place(self, region: AskedRegion) -> Place:
+        """Say where a region is."""
+        if region.mask is not None:
+            return place_of_mask(load_mask(Path(region.mask)))
+        places = [place_of_peak(self.literature.brain, peak) for peak in region.mni_peaks()]
+        return places[0] if len(places) == 1 else place_of_pattern(places)
 
 
 class TableSource:
@@ -126,32 +165,63 @@ class TableSource:
             merged=False if self.shipped else None,
         )
 
-    def answer(self, claim: Claim) -> Answer:
-        """Return the counts of the claim's named region, or of the one nearest to its peak."""
-        if claim.mask is not None:
+    def answer(self, region: AskedRegion, *, absent: bool = False) -> Answer:
+        """Return the counts of the named region, or of the one nearest to the peak."""
+        if region.mask is not None:
             raise InvalidClaimError("a base-rate table has no peaks to put into a mask; use a literature")
-        if claim.region is not None:
-            region = self.table.region(claim.region)
-            return Answer(
-                counts=self.table.term_counts(region.name),
-                place=Place(hemisphere=None, tissue=None, nearest=None, words=region.name),
-                region_kind="table",
-                radius_mm=region.radius_mm,
+        if len(region.peaks) > 1:
+            raise InvalidClaimError(
+                "a base-rate table cannot tell which studies hit several places; use a literature for a pattern"
             )
-        peak = claim.mni_peaks()[0]
-        region, distance = self.table.nearest_region(peak)
-        if region.centre is None:  # nearest_region answers only with placed regions
-            raise InvalidClaimError("the nearest region has no centre; name it with --region")
+        found, nearest = self._found(region)
+        if region.radius_mm not in (DEFAULT_RADIUS_MM, found.radius_mm):
+            stated = "no radius" if found.radius_mm is None else f"a radius of {found.radius_mm:g} mm"
+            raise InvalidClaimError(
+                f"the table's region {found.name!r} has {stated}, not {region.radius_mm:g} mm; leave --radius out, "
+                "or use a literature"
+            )
+        if region.region is not None:
+            place = Place(hemisphere=None, tissue=None, nearest=None, words=found.name)
+        else:
+            place = place_of_peak(brain_reference(), region.mni_peaks()[0], nearest)
+        counts = self.table.term_counts(found.name)
+        if absent:
+            counts = counts.inverted()
         return Answer(
-            counts=self.table.term_counts(region.name),
-            place=place_of_peak(
-                brain_reference(),
-                peak,
-                TablePlace(region=region.name, centre=region.centre, distance_mm=distance),
-            ),
+            counts=counts,
+            place=place,
             region_kind="table",
-            radius_mm=region.radius_mm,
+            radius_mm=found.radius_mm,
+            hits=int((counts.term_active + counts.other_active).max()),
+            percentile=None if absent else self.table.activation_percentile(found.name),
         )
+
+    def _found(self, region: AskedRegion) -> tuple[TableRegion, TablePlace | None]:
+        """Return the region that answers, and how far it is from the peak, if there is one."""
+        if region.region is not None:
+            return self.table.region(region.region), None
+        found, distance = self.table.nearest_region(region.mni_peaks()[0])
+        if found.centre is None:  # nearest_region answers only with placed regions
+            raise InvalidClaimError("the nearest region has no centre; name it with --region")
+        return found, TablePlace(region=found.name, centre=found.centre, distance_mm=distance)
+
+
+def as_source(source: Literature | BaseRateTable | Source) -> Source:
+    """Return the common face of whatever was given.
+
+    Parameters
+    ----------
+    source : Literature, BaseRateTable or Source
+        Where counts come from.
+
+    Returns
+    -------
+    Source
+        To be asked.
+    """
+    if isinstance(source, Literature):
+        return LiteratureSource(source)
+    return TableSource(source) if isinstance(source, BaseRateTable) else source
 
 
 def choose_source(

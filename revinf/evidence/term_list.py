@@ -80,9 +80,7 @@ def list_terms(source: Source, query: str = "", vocabulary: Vocabulary | None = 
         if asked in term or term in same or (asked and asked == words.domain(term))
     ]
     near = () if rows else tuple(get_close_matches(asked, list(totals), n=5, cutoff=0.5))
-    return TermList(
-        query=asked, rows=tuple(sorted(rows, key=lambda row: (-row.n_studies, row.term))), near=near
-    )
+    return TermList(query=asked, rows=tuple(sorted(rows, key=lambda row: (-row.n_studies, row.term))), near=near)
 
 
 def _totals(source: Source) -> dict[str, int]:

@@ -10,7 +10,12 @@ __all__ = ["verdict"]
 
 
 def verdict(
-    term: str, direction: Direction, headline_grade: str | None, severities: Sequence[str] = ()
+    term: str,
+    direction: Direction,
+    headline_grade: str | None,
+    severities: Sequence[str] = (),
+    *,
+    absent: bool = False,
 ) -> str:
     """Say in one sentence what the base rates carry.
 
@@ -24,6 +29,8 @@ def verdict(
         Grade of the end of the interval that is nearest 1.
     severities : sequence of str
         Severities of the cautions that hold.
+    absent : bool, default False
+        The claim rests on no activity.
 
     Returns
     -------
@@ -35,8 +42,9 @@ def verdict(
     >>> verdict("fear", "undecided", None)
     "In this literature, activity here does not tell studies of 'fear' from the others."
     """
+    seen = "no reported activity" if absent else "activity"
     if direction == "undecided":
-        sentence = f"In this literature, activity here does not tell studies of {term!r} from the others"
+        sentence = f"In this literature, {seen} here does not tell studies of {term!r} from the others"
     else:
         words = grade_words(str(headline_grade))
         how = (
@@ -45,7 +53,7 @@ def verdict(
             else "rarer in studies of {term} than in the others, which speaks against the claim"
         )
         sentence = (
-            f"In this literature, activity here is {how.format(term=repr(term))} "
+            f"In this literature, {seen} here is {how.format(term=repr(term))} "
             f"(at the weaker end of the interval: {words})"
         )
     if "stop" in severities:

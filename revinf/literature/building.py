@@ -9,7 +9,7 @@ from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.importing import import_studies
 from revinf.literature.literature import Literature
 from revinf.literature.manifest import Description, Manifest
-from revinf.literature.packing import pack_brain, pack_studies
+from revinf.literature.packing import pack_background, pack_brain, pack_studies
 from revinf.literature.refusals import ImportReport
 from revinf.literature.store import array_entries, write_folder
 from revinf.spaces.brain import brain_reference
@@ -58,7 +58,10 @@ def build_literature(
     tell = progress or (lambda _what, _rows: None)
     tell("packing", 0)
     brain = brain_reference()
-    arrays = {**pack_studies(studies), **pack_brain(brain)}
+    packed = pack_studies(studies)
+    tell("counting over the grey matter", 0)
+    background = pack_background(packed, brain)
+    arrays = {**packed, **pack_brain(brain), **background}
     manifest = Manifest(
         description=description,
         counts={
@@ -67,6 +70,8 @@ def build_literature(
             "terms": len(studies.terms),
             "annotations": len(studies.annotation_study),
             "points": len(brain.point_labels),
+            "grid": len(background["grid_tenths"]),
+            "negative_peaks": studies.n_negative,
         },
         merged_by=options.group,
         arrays=array_entries(arrays),

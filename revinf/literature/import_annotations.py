@@ -44,9 +44,7 @@ class LabelRows:
     group: dict[str, str]
 
 
-def read_annotations(
-    options: ImportOptions, group_column: str, report: ImportReport, tell: Progress
-) -> LabelRows:
+def read_annotations(options: ImportOptions, group_column: str, report: ImportReport, tell: Progress) -> LabelRows:
     """Read the annotations.
 
     Parameters

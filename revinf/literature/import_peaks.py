@@ -41,12 +41,15 @@ class PeakRows:
         The peaks.
     group : dict
         Group of each study that has one.
+    n_negative : int
+        Peaks with a negative statistic.
     """
 
     study_ids: list[str]
     study: NDArray[np.int32]
     tenths: NDArray[np.int16]
     group: dict[str, str]
+    n_negative: int
 
 
 def read_peaks(options: ImportOptions, group_column: str, report: ImportReport, tell: Progress) -> PeakRows:
@@ -176,7 +179,13 @@ class _PeakReader:
         tenths = np.concatenate(self.tenths or [np.zeros((0, 3), dtype=np.int16)])
         lines = np.concatenate(self.lines or [np.zeros(0, dtype=np.int64)])
         self._notice(study, tenths, lines)
-        return PeakRows(study_ids=self.numbering.names, study=study, tenths=tenths, group=self.group)
+        return PeakRows(
+            study_ids=self.numbering.names,
+            study=study,
+            tenths=tenths,
+            group=self.group,
+            n_negative=self.counts["negative_stat"],
+        )
 
     def _notice(self, study: NDArray[np.int32], tenths: NDArray[np.int16], lines: NDArray[np.int64]) -> None:
         """Record what a careful person would want to know of the peaks."""

@@ -20,9 +20,7 @@ class StudyRows:
     doi: dict[str, set[str]] = field(default_factory=dict)
 
 
-def read_studies(
-    path: Path | None, rename: dict[str, str], group_column: str, report: ImportReport
-) -> StudyRows:
+def read_studies(path: Path | None, rename: dict[str, str], group_column: str, report: ImportReport) -> StudyRows:
     """Read the table of studies.
 
     Parameters

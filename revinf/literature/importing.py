@@ -18,6 +18,7 @@ from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.import_peaks import PeakRows, read_peaks
 from revinf.literature.import_studies import read_studies
 from revinf.literature.refusals import ImportReport
+from revinf.literature.rows import open_delimited
 
 __all__ = ["ImportedStudies", "import_studies"]
 
@@ -44,6 +45,8 @@ class ImportedStudies:
         Pairs, each once, sorted.
     merged : bool
         Whether studies were merged by a group column.
+    n_negative : int
+        Usable peaks with a negative statistic, counted as activation.
     """
 
     study_ids: list[str]
@@ -55,6 +58,7 @@ class ImportedStudies:
     annotation_study: NDArray[np.int32]
     annotation_term: NDArray[np.int32]
     merged: bool
+    n_negative: int
 
 
 def import_studies(
@@ -97,6 +101,7 @@ def import_studies(
     tell = progress or (lambda _what, _rows: None)
     report = ImportReport()
     group_column = options.group or "group"
+    _check_renamed(options)
     studies = read_studies(options.studies, options.rename, group_column, report)
     peaks = read_peaks(options, group_column, report, tell)
     labels = read_annotations(options, group_column, report, tell)
@@ -105,6 +110,19 @@ def import_studies(
     dois = _dois_of_units(studies.doi, group_of if imported.merged else {})
     joined = ["; ".join(sorted(dois.get(study, ()))) for study in imported.study_ids]
     return replace(imported, dois=joined), report
+
+
+def _check_renamed(options: ImportOptions) -> None:
+    """Refuse a column that the user named and no file has: it would be ignored in silence."""
+    files = [file for file in (options.peaks, options.annotations, options.studies) if file is not None]
+    headers = {column for file in files for column in open_delimited(file).columns}
+    for ours, theirs in options.rename.items():
+        if theirs not in headers:
+            raise InputFileError(
+                f"no file has the column {theirs!r} that --column {ours}={theirs} names; check its spelling",
+                path=options.peaks,
+                row=1,
+            )
 
 
 def _dois_of_units(dois: dict[str, set[str]], group_of: dict[str, str]) -> dict[str, set[str]]:
@@ -177,6 +195,7 @@ def _assemble(
         annotation_study=pair_study,
         annotation_term=pair_term,
         merged=merged,
+        n_negative=peaks.n_negative,
     )
 
 
@@ -235,14 +254,12 @@ def _notice_uncounted(
     if unlabelled:
         report.notice(
             "studies-without-terms",
-            f"{unlabelled} studies have peaks but no term and are left out of both groups: unknown is not "
-            '"other"',
+            f'{unlabelled} studies have peaks but no term and are left out of both groups: unknown is not "other"',
         )
     if empty and options.keep_empty:
         report.notice("terms-without-peaks", f"{empty} studies have terms but no peak; kept as null results")
     elif empty:
         report.notice(
             "terms-without-peaks",
-            f"{empty} studies have terms but no peak and are left out; --keep-empty counts them as null "
-            "results",
+            f"{empty} studies have terms but no peak and are left out; --keep-empty counts them as null results",
         )

@@ -71,7 +71,7 @@ class Manifest:
         content = "\n".join(
             f"{name} {entry.sha256}"
             for name, entry in sorted(self.arrays.items())
-            if not name.startswith(("brain_", "point_"))
+            if not name.startswith(("brain_", "point_", "grid_"))
         )
         return hashlib.sha256(f"{FORMAT}\n{content}".encode()).hexdigest()[:16]
 
@@ -113,9 +113,7 @@ def read_manifest(folder: Path) -> Manifest:
     """
     path = folder / MANIFEST
     if not folder.is_dir():
-        raise LiteratureError(
-            "there is no such literature folder; make one with revinf build --out", path=folder
-        )
+        raise LiteratureError("there is no such literature folder; make one with revinf build --out", path=folder)
     if not path.is_file():
         raise LiteratureError(
             f"this folder holds no {MANIFEST}, so it is not a literature; make one with revinf build --out",
@@ -127,9 +125,7 @@ def read_manifest(folder: Path) -> Manifest:
         content = json.loads(path.read_text(encoding="utf-8"))
         stated = content["format"]
     except (OSError, ValueError, KeyError, TypeError, RecursionError):
-        raise LiteratureError(
-            "this is not a literature manifest; build the literature again", path=path
-        ) from None
+        raise LiteratureError("this is not a literature manifest; build the literature again", path=path) from None
     if stated != FORMAT:
         raise LiteratureError(
             f"this literature has format {str(stated)[:60]!r}, this revinf reads {FORMAT!r}; build it again",

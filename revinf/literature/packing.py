@@ -12,11 +12,20 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from revinf.literature.background import BACKGROUND_RADIUS_MM, SPACING_TENTHS, compute_background
 from revinf.literature.cells import CELL_SHAPE, cell_numbers, cell_starts
 from revinf.literature.importing import ImportedStudies
-from revinf.spaces.brain import BrainReference
+from revinf.spaces.brain import BrainReference, grey_lattice
 
-__all__ = ["ARRAY_TYPES", "Arrays", "pack_brain", "pack_studies", "pack_text", "unpack_text"]
+__all__ = [
+    "ARRAY_TYPES",
+    "Arrays",
+    "pack_background",
+    "pack_brain",
+    "pack_studies",
+    "pack_text",
+    "unpack_text",
+]
 
 Arrays = dict[str, NDArray[Any]]
 
@@ -40,6 +49,9 @@ ARRAY_TYPES: dict[str, tuple[str, tuple[int | str, ...]]] = {
     "term_ends": ("int64", ("terms",)),
     "brain_tissue": ("uint8", ("*", "*", "*")),
     "brain_affine": ("float64", (4, 4)),
+    "grid_tenths": ("int16", ("grid", 3)),
+    "grid_hits": ("int32", ("grid",)),
+    "grid_study_hits": ("int32", ("studies",)),
     "point_tenths": ("int16", ("points", 3)),
     "point_label_text": ("uint8", ("*",)),
     "point_label_ends": ("int64", ("points",)),
@@ -62,7 +74,7 @@ def pack_studies(studies: ImportedStudies) -> Arrays:
     Returns
     -------
     dict of str to array
-        All arrays of `ARRAY_TYPES` but those of the brain.
+        The arrays of `ARRAY_TYPES` that describe studies, peaks and terms.
     """
     number = cell_numbers(studies.peak_tenths)
     by_cell = np.argsort(number, kind="stable")
@@ -113,6 +125,36 @@ def pack_brain(brain: BrainReference) -> Arrays:
     ):
         arrays[f"{name}_text"], arrays[f"{name}_ends"] = pack_text(items)
     return arrays
+
+
+def pack_background(studies: Arrays, brain: BrainReference) -> Arrays:
+    """Count how often a 10 mm sphere is hit at every grey-matter location of a 4 mm grid.
+
+    Parameters
+    ----------
+    studies : dict of str to array
+        As from `pack_studies`.
+    brain : BrainReference
+        Carries the grey matter.
+
+    Returns
+    -------
+    dict of str to array
+        The arrays of `ARRAY_TYPES` that describe the grid.
+    """
+    grid = grey_lattice(brain, SPACING_TENTHS / 10)
+    background = compute_background(
+        studies["peak_tenths"],
+        studies["peak_study"],
+        len(studies["study_n_peaks"]),
+        grid,
+        BACKGROUND_RADIUS_MM,
+    )
+    return {
+        "grid_tenths": grid,
+        "grid_hits": background.location_hits,
+        "grid_study_hits": background.study_locations,
+    }
 
 
 def pack_text(items: Sequence[str]) -> tuple[NDArray[np.uint8], NDArray[np.int64]]:

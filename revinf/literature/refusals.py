@@ -77,10 +77,7 @@ class ImportReport:
         groups: dict[tuple[str, str], list[int]] = {}
         for file, line, reason, _ in self.refused:
             groups.setdefault((file, reason), []).append(line)
-        return [
-            (file, reason, len(lines), tuple(lines[:_SHOWN_LINES]))
-            for (file, reason), lines in groups.items()
-        ]
+        return [(file, reason, len(lines), tuple(lines[:_SHOWN_LINES])) for (file, reason), lines in groups.items()]
 
     def write_refused(self, path: Path) -> bool:
         """Write the refused rows beside the output; remove an old list of ours when there are none.

@@ -153,9 +153,7 @@ def open_delimited(path: Path, rename: Mapping[str, str] | None = None) -> Delim
     if "\x00" in header or len(header) >= _HEADER_LIMIT:
         raise InputFileError("this is not a text table; give a CSV or TSV file", path=path, row=1)
     if header.count('"') % 2:
-        raise InputFileError(
-            "a quote in the header never closes; keep the header on one line", path=path, row=1
-        )
+        raise InputFileError("a quote in the header never closes; keep the header on one line", path=path, row=1)
     if not header.strip():
         raise InputFileError("the file has no header line; the first line must name the columns", path=path)
     delimiter = "\t" if path.name.removesuffix(".gz").endswith(".tsv") else ","

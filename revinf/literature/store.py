@@ -77,9 +77,7 @@ def replacing(target: Path, may_replace: Callable[[Path], bool]) -> Iterator[Pat
     """Give a fresh folder beside `target`; on success rename it into place, else remove it."""
     target = Path(os.path.abspath(target))
     if target.exists() and not may_replace(target):
-        raise InputFileError(
-            "something that is not a literature stands here; give --out another name", path=target
-        )
+        raise InputFileError("something that is not a literature stands here; give --out another name", path=target)
     beside: Path | None = None
     try:
         target.parent.mkdir(parents=True, exist_ok=True)

@@ -17,11 +17,13 @@ from revinf.reports.numbers import (
     ratio,
     strip,
 )
+from revinf.reports.rivals_screen import rivals_screen
 from revinf.reports.terminal import hanging, heading, plain_table
 from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, claim_words, grade_line
 
 if TYPE_CHECKING:
-    from revinf.evidence.assessment import Assessment, Posterior
+    from revinf.evidence.assessment import Assessment
+    from revinf.evidence.parts import Posterior
 
 __all__ = ["check_screen"]
 
@@ -57,6 +59,7 @@ def check_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
         *_counts(assessment, drawn),
         *_ratio(assessment, drawn),
         *_posteriors(assessment, drawn),
+        *rivals_screen(assessment),
         *_cautions(assessment),
         *_closing(),
     ]
@@ -91,10 +94,12 @@ def _where(assessment: Assessment) -> str:
     """Say where the activity was."""
     claim = assessment.claim
     if claim.region_kind == "mask":
-        return "activity in a mask"
+        return "no activity in a mask" if claim.absent else "activity in a mask"
     if not claim.peaks:
         return f"activity in {assessment.place.words}"
-    where = f"activity at {coordinates(claim.peaks[0])} {claim.space}"
+    what = "no activity" if claim.absent else "activity"
+    points = " and ".join(coordinates(peak) for peak in claim.peaks)
+    where = f"{what} at {points} {claim.space}"
     return where if claim.region_kind == "table" else f"{where}, within {claim.radius_mm:g} mm"
 
 
@@ -236,9 +241,7 @@ def _cautions(assessment: Assessment) -> list[Any]:
     table.add_column(overflow="fold")
     for caution in assessment.cautions:
         mark, style = _MARKS[caution.severity]
-        table.add_row(
-            Text(f"{mark} {caution.severity}", style=style), Text(caution.code), Text(caution.message)
-        )
+        table.add_row(Text(f"{mark} {caution.severity}", style=style), Text(caution.code), Text(caution.message))
     return [heading("Cautions"), table]
 
 

@@ -93,8 +93,7 @@ def import_screen(report: dict[str, Any]) -> list[Any]:
                 [
                     (
                         item["file"],
-                        f"{agreement(item['rows'], 'row')}: {item['reason']}"
-                        + first_lines(item["first_lines"]),
+                        f"{agreement(item['rows'], 'row')}: {item['reason']}" + first_lines(item["first_lines"]),
                     )
                     for item in report["refused"]
                 ]
@@ -104,10 +103,7 @@ def import_screen(report: dict[str, Any]) -> list[Any]:
         parts += [
             heading("Noticed"),
             hanging(
-                [
-                    (item["code"], item["message"] + first_lines(item["first_lines"]))
-                    for item in report["notices"]
-                ]
+                [(item["code"], item["message"] + first_lines(item["first_lines"])) for item in report["notices"]]
             ),
         ]
     return parts

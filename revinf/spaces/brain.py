@@ -273,14 +273,10 @@ def place_in_words(reference: BrainReference, xyz_mm: ArrayLike) -> str:
     if label is None:
         parts.append("no labelled point within 6 mm")
     else:
-        parts.append(
-            f"{label.distance_mm:.0f} mm from a published point labelled '{label.label}' ({label.source})"
-        )
+        parts.append(f"{label.distance_mm:.0f} mm from a published point labelled '{label.label}' ({label.source})")
     network = nearest_network(reference, xyz_mm)
     if network is not None:
-        parts.append(
-            f"network of the nearest point of Seitzman et al. 2020: {network[0]}, {network[1]:.0f} mm"
-        )
+        parts.append(f"network of the nearest point of Seitzman et al. 2020: {network[0]}, {network[1]:.0f} mm")
     return "; ".join(parts)
 
 

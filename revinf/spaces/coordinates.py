@@ -62,8 +62,7 @@ def finite_xyz(xyz: ArrayLike) -> NDArray[np.float64]:
         ) from None
     if values.ndim == 0 or values.shape[-1] != 3:
         raise SpaceError(
-            f"xyz must have three values a point, but got an array of shape {values.shape}; "
-            "give x, y and z in mm"
+            f"xyz must have three values a point, but got an array of shape {values.shape}; give x, y and z in mm"
         )
     wrong = ~(np.abs(values) <= FURTHEST_MM)
     if wrong.any():

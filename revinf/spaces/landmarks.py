@@ -40,9 +40,7 @@ class LabelledPoint:
     network: str
 
 
-def nearest_label(
-    reference: BrainReference, xyz_mm: ArrayLike, within_mm: float = 6.0
-) -> LabelledPoint | None:
+def nearest_label(reference: BrainReference, xyz_mm: ArrayLike, within_mm: float = 6.0) -> LabelledPoint | None:
     """Return the nearest published point that has an anatomical label.
 
     Parameters

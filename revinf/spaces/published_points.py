@@ -14,6 +14,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from revinf.spaces.coordinates import to_tenths
+from revinf.spaces.packaged import PointRow, packaged_points
 
 __all__ = ["DOSENBACH", "SEITZMAN", "PublishedPoints", "published_points"]
 
@@ -74,6 +75,19 @@ def published_points() -> PublishedPoints:
     >>> len(points.labels), points.labels[0], points.sources[0]
     (460, 'inf cerebellum', '160-point set of Dosenbach et al. 2010')
     """
+    first, second = packaged_points() or _asked_points()
+    labels = [label for *_, label, _ in first]
+    labels += [_SUBCORTICAL.get(region, "") for *_, region, _ in second]
+    return PublishedPoints(
+        xyz_tenths=to_tenths([row[:3] for row in first + second]).astype(np.int16),
+        labels=tuple(labels),
+        sources=(DOSENBACH,) * len(first) + (SEITZMAN,) * len(second),
+        networks=tuple(_in_words(network) for *_, network in first + second),
+    )
+
+
+def _asked_points() -> tuple[list[PointRow], list[PointRow]]:
+    """Return both sets from nilearn itself, whatever version it is."""
     # nilearn announces changes of its own interface when it is imported or asked; no news for users.
     with warnings.catch_warnings():
         warnings.simplefilter("ignore")
@@ -81,15 +95,21 @@ def published_points() -> PublishedPoints:
 
         first = datasets.fetch_coords_dosenbach_2010()
         second = datasets.fetch_coords_seitzman_2018()
-    xyz = [np.column_stack([rois[axis] for axis in "xyz"]) for rois in (first.rois, second.rois)]
-    labels = [re.sub(r"\s*\d+$", "", str(label)) for label in first.labels]
-    labels += [_SUBCORTICAL.get(str(region), "") for region in second.regions]
-    networks = [*first.networks, *second.networks]
-    return PublishedPoints(
-        xyz_tenths=to_tenths(np.concatenate(xyz)).astype(np.int16),
-        labels=tuple(labels),
-        sources=(DOSENBACH,) * len(first.labels) + (SEITZMAN,) * len(second.regions),
-        networks=tuple(_in_words(str(network)) for network in networks),
+    # The first set's labels carry a running number.
+    names = [re.sub(r"\s*\d+$", "", str(label)) for label in first.labels]
+    return (
+        [
+            (float(x), float(y), float(z), name, str(network))
+            for (x, y, z), name, network in zip(
+                first.rois[["x", "y", "z"]].to_numpy(), names, first.networks, strict=True
+            )
+        ],
+        [
+            (float(x), float(y), float(z), str(region), str(network))
+            for (x, y, z), region, network in zip(
+                second.rois[["x", "y", "z"]].to_numpy(), second.regions, second.networks, strict=True
+            )
+        ],
     )
 
 

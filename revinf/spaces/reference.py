@@ -15,6 +15,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from revinf.exceptions import SpaceError
+from revinf.spaces.packaged import Templates, packaged_templates
 from revinf.spaces.published_points import published_points
 from revinf.spaces.voxels import checked_affine
 
@@ -95,18 +96,10 @@ def brain_reference() -> BrainReference:
     >>> brain_reference().tissue.shape
     (99, 117, 95)
     """
-    with warnings.catch_warnings():
-        # nilearn announces changes of its own interface; no news for our users.
-        warnings.simplefilter("ignore")
-        from nilearn import datasets
-
-        mask_image = datasets.load_mni152_brain_mask(resolution=2)
-        grey = np.asarray(datasets.load_mni152_gm_template(resolution=2).dataobj)
-        white = np.asarray(datasets.load_mni152_wm_template(resolution=2).dataobj)
-    tissue = (np.asarray(mask_image.dataobj) > 0).astype(np.uint8)
+    brain, grey, white, affine = packaged_templates() or _asked_templates()
+    tissue = brain.astype(np.uint8)
     tissue[(white > 0.5) & (white > grey)] = WHITE
     tissue[(grey > 0.5) & (grey >= white)] = GREY
-    affine = np.array(mask_image.affine, dtype=np.float64)
     points = published_points()
     for array in (tissue, affine, points.xyz_tenths):
         array.setflags(write=False)
@@ -118,3 +111,17 @@ def brain_reference() -> BrainReference:
         point_sources=points.sources,
         point_networks=points.networks,
     )
+
+
+def _asked_templates() -> Templates:
+    """Return the same from nilearn itself, whatever version it is."""
+    with warnings.catch_warnings():
+        # nilearn announces changes of its own interface; no news for our users.
+        warnings.simplefilter("ignore")
+        from nilearn import datasets
+
+        mask_image = datasets.load_mni152_brain_mask(resolution=2)
+        grey = np.asarray(datasets.load_mni152_gm_template(resolution=2).dataobj)
+        white = np.asarray(datasets.load_mni152_wm_template(resolution=2).dataobj)
+    brain = np.asarray(mask_image.dataobj) > 0
+    return brain, grey, white, np.array(mask_image.affine, dtype=np.float64)

@@ -7,25 +7,21 @@ Mask images are read here and nowhere else in this part.
 
 from __future__ import annotations
 
-import gzip
-import warnings
 from dataclasses import dataclass, field
 from os import PathLike
 from pathlib import Path
-from typing import Any, Literal
+from typing import Literal
 
 import numpy as np
 from numpy.typing import NDArray
 
 from revinf.exceptions import InputFileError, SpaceError
 from revinf.spaces.coordinates import FURTHEST_MM
+from revinf.spaces.images import image_stem, read_image
 from revinf.spaces.spheres import LARGEST_RADIUS_MM, Sphere, sphere
-from revinf.spaces.voxels import checked_affine, checked_tenths, touched_voxels, voxel_sizes
+from revinf.spaces.voxels import checked_affine, checked_tenths, touched_voxels
 
 __all__ = ["LARGEST_RADIUS_MM", "Mask", "Region", "Sphere", "load_mask", "sphere"]
-
-_LARGEST_VOXEL_MM = 20.0
-_LONGEST_AXIS = 512
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -181,12 +177,7 @@ def load_mask(path: str | PathLike[str]) -> Mask:
     revinf.exceptions.InputFileError: absent.nii.gz: there is no such file; give the path of a mask image
     """
     file = Path(path)
-    suffix = ".nii.gz" if file.name.lower().endswith(".nii.gz") else ".nii"
-    if not file.name.lower().endswith(suffix):
-        raise InputFileError("a mask must be a .nii or .nii.gz file; convert the image", path=path)
-    if not file.is_file():
-        raise InputFileError("there is no such file; give the path of a mask image", path=path)
-    values, affine = _read_image(file)
+    values, affine = read_image(file)
     inside = values != 0
     if not inside.any():
         raise InputFileError("the mask is empty: every voxel is 0; choose another", path=path)
@@ -196,81 +187,6 @@ def load_mask(path: str | PathLike[str]) -> Mask:
             path=path,
         )
     try:
-        return Mask(ijk_inside=inside, affine=affine, name=file.name[: -len(suffix)])
+        return Mask(ijk_inside=inside, affine=affine, name=image_stem(file))
     except SpaceError as error:
         raise InputFileError(str(error), path=path) from None
-
-
-def _read_image(file: Path) -> tuple[NDArray[Any], NDArray[np.float64]]:
-    """Return the values of a NIfTI image, 3-D and finite, and its affine."""
-    import nibabel as nib
-    from nibabel.imageglobals import LoggingOutputSuppressor
-
-    try:
-        # Headers with repairable faults make nibabel warn and log; the checks here replace that.
-        with warnings.catch_warnings(), LoggingOutputSuppressor():
-            warnings.simplefilter("ignore")
-            image = nib.load(file)
-            if not isinstance(image, nib.Nifti1Image):
-                raise InputFileError("is no NIfTI volume; export a 3-D image", path=file)
-            affine = _checked_header(image, file)
-            if file.name.lower().endswith(".gz"):
-                _read_to_the_end(file)
-            values = np.asanyarray(image.dataobj)
-    except InputFileError:
-        raise
-    # A broken header can raise nearly anything, from OSError over zlib.error to MemoryError.
-    except Exception as error:
-        raise InputFileError(
-            f"cannot be read as a NIfTI image ({type(error).__name__}), it may be cut off or of "
-            "another format; save it again as .nii.gz",
-            path=file,
-        ) from None
-    if values.dtype.kind not in "buif":
-        raise InputFileError(
-            f"voxels must be plain numbers, but are {values.dtype}; save the mask as integers",
-            path=file,
-        )
-    if not np.isfinite(values).all():
-        raise InputFileError("voxels must be finite, but some are NaN or infinite; set them to 0", path=file)
-    return values.reshape(values.shape[:3]), affine
-
-
-def _read_to_the_end(file: Path) -> None:
-    """Raise if a gzipped file is cut off or damaged: nibabel stops before the checksum at its end."""
-    with gzip.open(file) as stream:
-        while stream.read(2**20):
-            pass
-
-
-def _checked_header(image: Any, file: Path) -> NDArray[np.float64]:
-    """Return the affine of an image after checking grid and orientation, before any voxel is read."""
-    shape = tuple(int(length) for length in image.shape)
-    if len(shape) not in (3, 4) or (len(shape) == 4 and shape[3] != 1):
-        raise InputFileError(
-            f"a mask must be one 3-D volume, but the image has shape {shape}; extract one volume",
-            path=file,
-        )
-    if not all(0 < length <= _LONGEST_AXIS for length in shape):
-        raise InputFileError(
-            f"a mask may have 1 to {_LONGEST_AXIS} voxels an axis, but the image has shape {shape}; "
-            "resample it",
-            path=file,
-        )
-    if int(image.header["qform_code"]) == 0 and int(image.header["sform_code"]) == 0:
-        raise InputFileError(
-            "the image does not say where it lies (qform and sform codes are 0); "
-            "save it with an affine to MNI152",
-            path=file,
-        )
-    try:
-        affine = checked_affine(image.affine)
-    except SpaceError as error:
-        raise InputFileError(str(error), path=file) from None
-    if not voxel_sizes(affine).max() <= _LARGEST_VOXEL_MM:
-        raise InputFileError(
-            f"voxels may measure up to {_LARGEST_VOXEL_MM:.0f} mm, but measure "
-            f"{voxel_sizes(affine).max():.4g} mm; check the units of the image",
-            path=file,
-        )
-    return affine

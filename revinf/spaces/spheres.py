@@ -58,9 +58,7 @@ class Sphere:
                 f"radius_mm must lie between 0 and {LARGEST_RADIUS_MM:.0f} mm, "
                 f"but got {self.radius_mm!r}; 10 mm is usual"
             )
-        if len(self.centre_tenths) != 3 or not all(
-            abs(value) <= 10 * FURTHEST_MM for value in self.centre_tenths
-        ):
+        if len(self.centre_tenths) != 3 or not all(abs(value) <= 10 * FURTHEST_MM for value in self.centre_tenths):
             raise SpaceError(
                 f"centre_tenths must be three whole tenths of a millimetre within "
                 f"{FURTHEST_MM:.0f} mm of the origin, but got {self.centre_tenths!r}; use sphere()"

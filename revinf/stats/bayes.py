@@ -53,9 +53,7 @@ def posterior_probability(prior: float, ratio: float) -> float:
     """
     check_probability(prior, "prior", _PRIOR_REMEDY)
     if not ratio >= 0:
-        raise InvalidCountError(
-            f"the likelihood ratio must not be negative, but got {ratio!r}; check the rates"
-        )
+        raise InvalidCountError(f"the likelihood ratio must not be negative, but got {ratio!r}; check the rates")
     if ratio == 0:
         return 0.0
     return 1 / (1 + (1 - prior) / prior / ratio)

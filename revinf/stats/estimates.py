@@ -76,9 +76,7 @@ class Counts:
                     f"{name} must be a whole number, but got {value!r}; give a count of studies"
                 ) from None
             if whole < 0:
-                raise InvalidCountError(
-                    f"{name} must not be negative, but got {whole}; give a count of studies"
-                )
+                raise InvalidCountError(f"{name} must not be negative, but got {whole}; give a count of studies")
             object.__setattr__(self, name, whole)
 
     @property
@@ -142,9 +140,7 @@ def check_probability(value: float, name: str, remedy: str) -> float:
     except (TypeError, ValueError):
         number = float("nan")
     if not 0.0 < number < 1.0:
-        raise InvalidProbabilityError(
-            f"{name} must lie strictly between 0 and 1, but got {value!r}; {remedy}"
-        )
+        raise InvalidProbabilityError(f"{name} must lie strictly between 0 and 1, but got {value!r}; {remedy}")
     return number
 
 

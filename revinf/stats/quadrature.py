@@ -24,9 +24,7 @@ def _rule() -> tuple[NDArray[np.float64], NDArray[np.float64], NDArray[np.float6
     """Return nodes, weights, and the matrix from node values to Legendre coefficients."""
     nodes, weights = legendre.leggauss(NODES)
     # Discrete orthogonality: c_k = (2k+1)/2 sum_i w_i P_k(x_i) f(x_i), exact up to the node count.
-    to_coefficients = ((2 * np.arange(NODES) + 1) / 2)[:, None] * (
-        legendre.legvander(nodes, NODES - 1).T * weights
-    )
+    to_coefficients = ((2 * np.arange(NODES) + 1) / 2)[:, None] * (legendre.legvander(nodes, NODES - 1).T * weights)
     return nodes, weights, to_coefficients
 
 

@@ -106,9 +106,7 @@ def jeffreys_rates(pairs: Sequence[tuple[int, int]], *, level: float = 0.95) -> 
         return result
     a = np.array([pairs[i][0] + 0.5 for i in known])
     b = np.array([pairs[i][1] - pairs[i][0] + 0.5 for i in known])
-    for i, (low, middle, high) in zip(
-        known, beta_quantiles(a, b, np.array([tail, 0.5, 1 - tail])), strict=True
-    ):
+    for i, (low, middle, high) in zip(known, beta_quantiles(a, b, np.array([tail, 0.5, 1 - tail])), strict=True):
         result[i] = Estimate(float(middle), float(low), float(high))
     return result
 

@@ -235,8 +235,7 @@ def log_ratio_summary(
         )
     if prior not in get_args(RatioPrior):
         raise InvalidProbabilityError(
-            f"the ratio's prior must be one of {', '.join(get_args(RatioPrior))}, "
-            f"but got {prior!r}; use shared"
+            f"the ratio's prior must be one of {', '.join(get_args(RatioPrior))}, but got {prior!r}; use shared"
         )
     if not np.allclose(levels + levels[::-1], 1, rtol=0, atol=1e-12):
         raise InvalidProbabilityError(

@@ -197,9 +197,7 @@ def _log_marginal(kernel: _Kernel, theta: _Array) -> _Array:
     return np.asarray(outside + top + np.log(inner * width))
 
 
-def _log_inner(
-    kernel: _Kernel, v: _Array, theta: _Array, miss: _Array, small_miss: _Array, gap: _Array
-) -> _Array:
+def _log_inner(kernel: _Kernel, v: _Array, theta: _Array, miss: _Array, small_miss: _Array, gap: _Array) -> _Array:
     """Return the log of the kernel's part in v, at (T, n, m) values of v."""
     log_q = -np.logaddexp(0.0, v)  # log(1-p)
     q = np.exp(log_q)

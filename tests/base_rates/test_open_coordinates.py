@@ -40,9 +40,7 @@ def test_all_terms_at_several_places_equal_a_plain_loop_over_the_files(open_lite
         hits = {
             study
             for study, rows in peaks.items()
-            if any(
-                sum((p - 10 * c) ** 2 for p, c in zip(peak, centre, strict=True)) <= 100**2 for peak in rows
-            )
+            if any(sum((p - 10 * c) ** 2 for p, c in zip(peak, centre, strict=True)) <= 100**2 for peak in rows)
         }
         counts = count_terms(open_literature, sphere(centre, 10))
         assert counts.terms == sorted(terms)

@@ -175,9 +175,7 @@ def test_the_fingerprint_names_the_rows_not_the_packing(tmp_path):
     write_table(rows, tmp_path / "table.csv")
     write_table(rows, tmp_path / "table.csv.gz")
     write_table([rows[0]._replace(term_active=4)], tmp_path / "other.csv")
-    one, packed, other = (
-        read_rows(tmp_path / name)[1] for name in ("table.csv", "table.csv.gz", "other.csv")
-    )
+    one, packed, other = (read_rows(tmp_path / name)[1] for name in ("table.csv", "table.csv.gz", "other.csv"))
     assert one == packed != other
     assert len(one) == 16
 

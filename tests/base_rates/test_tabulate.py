@@ -8,9 +8,10 @@ import numpy as np
 import pytest
 
 from revinf.base_rates.counting import count_terms
+from revinf.base_rates.places import PlaceRequest, chosen_places, lattice_places, listed_places
 from revinf.base_rates.table import BaseRateTable
 from revinf.base_rates.table_rows import write_table
-from revinf.base_rates.tabulate import chosen_places, lattice_places, listed_places, tabulate
+from revinf.base_rates.tabulate import tabulate
 from revinf.exceptions import InputFileError, InvalidClaimError, SpaceError, UnknownTermError
 from revinf.spaces.brain import tissue_at
 from revinf.spaces.spheres import sphere
@@ -109,14 +110,15 @@ def test_a_list_without_places_or_columns_is_refused(listed):
 def test_places_come_from_exactly_one_source(invented_literature, tmp_path):
     (tmp_path / "places.csv").write_text("region,x,y,z\nhere,1,2,3\n")
     assert [
-        place.name for place in chosen_places(invented_literature, None, tmp_path / "places.csv", 5.0)
+        place.name
+        for place in chosen_places(invented_literature, PlaceRequest(radius_mm=5.0, listed=tmp_path / "places.csv"))
     ] == ["here"]
-    assert chosen_places(invented_literature, 50.0, None, 5.0) == lattice_places(
+    assert chosen_places(invented_literature, PlaceRequest(radius_mm=5.0, spacing_mm=50.0)) == lattice_places(
         invented_literature, 50.0, 5.0
     )
     for spacing, path in ((None, None), (50.0, tmp_path / "places.csv")):
         with pytest.raises(InvalidClaimError, match="give either --lattice MM or --regions FILE"):
-            chosen_places(invented_literature, spacing, path, 5.0)
+            chosen_places(invented_literature, PlaceRequest(radius_mm=5.0, spacing_mm=spacing, listed=path))
 
 
 def test_counts_of_the_tiny_literature_are_those_one_counts_by_hand(invented_literature, listed):
@@ -166,9 +168,7 @@ def test_a_table_of_an_invented_literature_says_so_and_answers_like_it(invented_
     assert table.terms == invented_literature.terms
     assert table.n_studies == invented_literature.n_studies
     source = table.region(places[0].name).source
-    assert source == (
-        f"invented data: tiny invented literature, fingerprint {invented_literature.fingerprint}"
-    )
+    assert source == (f"invented data: tiny invented literature, fingerprint {invented_literature.fingerprint}")
     for place in places[::10]:
         region, distance = table.nearest_region(place.region.centre_mm)
         assert (region.name, distance) == (place.name, 0.0)

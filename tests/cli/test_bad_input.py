@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import shlex
 import shutil
 from pathlib import Path
 
@@ -44,77 +45,84 @@ def files(demo, tmp_path_factory):
     }
 
 
-LIT = ("check", "--literature", "{lit}")
-BUILD = ("build", "--peaks", "{peaks}", "--annotations", "{terms}", "--out", "{out}")
+# What is wrong -> the words typed, and what the line must say.
 CASES = {
-    "unknown term": ((*LIT, "--peak", "1", "2", "3", "--term", "feer"), "did you mean 'fear'?"),
-    "synonym": ((*LIT, "--peak", "1", "2", "3", "--term", "being afraid of"), "carries the term"),
-    "empty term": ((*LIT, "--peak", "1", "2", "3", "--term", " "), "a claim needs a term"),
-    "peak of two numbers": ((*LIT, "--peak", "1", "2", "--term", "fear"), "needs three numbers in mm, but got '1 2'"),
-    "peak with a letter": ((*LIT, "--peak", "1", "2", "x", "--term", "fear"), "but got '1 2 x'"),
-    "peak without numbers": ((*LIT, "--peak", "--term", "fear"), "but got ''; write --peak 54 -54 24"),
-    "peak of four numbers": ((*LIT, "--peak", "1", "2", "3", "4", "--term", "fear"), "unexpected extra argument"),
-    "peak that is not a number": ((*LIT, "--peak", "nan", "2", "3", "--term", "fear"), "but got nan"),
-    "peak in metres": ((*LIT, "--peak", "1e9", "2", "3", "--term", "fear"), "within 1000 mm of the origin"),
-    "two peaks": ((*LIT, *HERE, "--peak", "4", "5", "6"), "(2 peaks) cannot be assessed yet"),
-    "no place": ((*LIT, "--term", "fear"), "exactly one place, but got 0"),
-    "peak and mask": ((*LIT, *HERE, "--mask", "{text}"), "exactly one place, but got 2"),
-    "missing literature": (("check", "--literature", "{absent}", *HERE), "there is no such literature folder"),
-    "folder that is no literature": (("check", "--literature", "{occupied}", *HERE), "is not a literature"),
-    "file for a literature": (("check", "--literature", "{peaks}", *HERE), "there is no such literature folder"),
-    "missing table": (("check", "--table", "{absent}", *HERE), "there is no such file; check the path"),
-    "table with a wrong count": (("check", "--table", "{table}", "--region", "here", "--term", "fear"),
-                                 "table.csv:2:term_active: 9 active studies are more than the 3"),
-    "text for a table": (("check", "--table", "{plain}", *HERE), "column 'region' is missing"),
-    "both sources": ((*LIT, "--table", "{table}", *HERE), "give --literature or --table, not both"),
-    "prior of 1": ((*LIT, *HERE, "--prior", "1"), "strictly between 0 and 1, but got 1.0"),
-    "prior of 0": ((*LIT, *HERE, "--prior", "0"), "strictly between 0 and 1, but got 0.0"),
-    "prior in words": ((*LIT, *HERE, "--prior", "often"), "or the word prevalence, but got 'often'"),
-    "negative prior": ((*LIT, *HERE, "--prior", "-0.5"), "strictly between 0 and 1, but got -0.5"),
-    "level of 1": ((*LIT, *HERE, "--level", "1"), "level must lie strictly between 0 and 1, but got 1.0"),
-    "level of 95": ((*LIT, *HERE, "--level", "95"), "use 0.95 for a 95 % interval"),
-    "level in words": ((*LIT, *HERE, "--level", "high"), "'--level'"),
-    "unknown space": ((*LIT, *HERE, "--space", "moon"), "space must be MNI152 or Talairach, but got 'moon'"),
-    "unknown transform": ((*LIT, *HERE, "--transform", "magic"), "transform must be one of pooled, spm"),
-    "negative radius": ((*LIT, *HERE, "--radius", "-1"), "radius_mm must lie between 0 and 200 mm"),
-    "unknown ratio prior": ((*LIT, *HERE, "--ratio-prior", "flat"), "ratio prior must be shared or independent"),
-    "ratio limit of 1": ((*LIT, *HERE, "--ratio-prior-limit", "1"), "must be above 1, but got 1.0"),
-    "missing term": ((*LIT, "--peak", "1", "2", "3"), "Missing option '--term'"),
-    "option without value": ((*LIT, "--peak", "1", "2", "3", "--term"), "'--term' requires an argument"),
-    "unknown option": ((*LIT, *HERE, "--bogus"), "No such option: --bogus. See revinf --help."),
-    "unknown command": (("bogus",), "No such command 'bogus'. See revinf --help."),
-    "no command": ((), "Missing command. See revinf --help."),
-    "extra word": ((*LIT, *HERE, "more"), "unexpected extra argument"),
-    "region without a table": ((*LIT, "--region", "Broca", "--term", "fear"), "names a place of a table"),
-    "region the shipped table lacks": (("check", "--region", "Broca", "--term", "navigation"), "has no region 'Broca'"),
-    "peak far from the shipped table": (("check", "--peak", "0", "0", "120", "--term", "navigation"),
-                                        "farther than its radius of 10 mm"),
-    "mask with a table": (("check", "--mask", "{text}", "--term", "navigation"), "no peaks to put into a mask"),
-    "missing mask": ((*LIT, "--mask", "{absent}.nii", "--term", "fear"), "there is no such file; give the path of a"),
-    "text for a mask": ((*LIT, "--mask", "{text}", "--term", "fear"), "cannot be read as a NIfTI image"),
-    "table for a mask": ((*LIT, "--mask", "{peaks}", "--term", "fear"), "must be a .nii or .nii.gz file"),
-    "empty mask": ((*LIT, "--mask", "{empty}", "--term", "fear"), "the mask is empty"),
-    "missing kinds": ((*LIT, *HERE, "--kinds", "{absent}"), "cannot be read"),
-    "kinds without terms": ((*LIT, *HERE, "--kinds", "{kinds}"), "column 'term' is missing"),
-    "build without peaks": (("build", "--annotations", "{terms}", "--out", "{out}"), "Missing option '--peaks'"),
-    "build from a missing file": ((*BUILD[:2], "{absent}", *BUILD[3:]), "there is no such file"),
-    "build with an unknown sign": ((*BUILD, "--sign", "both"), "sign must be one of all, positive, negative"),
-    "build with half a column": ((*BUILD, "--column", "study"), "--column needs OURS=YOURS, but got 'study'"),
-    "build with an unknown column": ((*BUILD, "--column", "study=paper"), "paper"),
-    "build over other files": ((*BUILD[:-1], "{occupied}"), "something that is not a literature stands here"),
-    "inspect nothing": (("inspect",), "Missing argument 'FOLDER'"),
-    "inspect a missing folder": (("inspect", "{absent}"), "there is no such literature folder"),
-    "terms of a missing table": (("terms", "--table", "{absent}"), "there is no such file"),
-    "terms of two sources": (("terms", "--table", "{table}", "--literature", "{lit}"), "not both"),
-    "tabulate nothing": (("tabulate", "--literature", "{lit}", "--out", "{out}"), "either --lattice MM or --regions"),
-    "tabulate a lattice of 0": (("tabulate", "--literature", "{lit}", "--out", "{out}", "--lattice", "0"),
-                                "spacing_mm must be 1 to 50 mm"),
-    "tabulate a bad place": (("tabulate", "--literature", "{lit}", "--out", "{out}", "--regions", "{places}"),
-                             "places.csv:2:z: 'three' is not a number"),
-    "tabulate an unknown term": (("tabulate", "--literature", "{lit}", "--out", "{out}", "--lattice", "40", "--term",
-                                  "feer"), "did you mean 'fear'"),
-    "demo over other files": (("demo", "--out", "{occupied}"), "something stands here already"),
+    "unknown term": ("{check} --peak 1 2 3 --term feer", "did you mean 'fear'?"),
+    "word of no study": ("{check} --peak 1 2 3 --term juggling", "carries the term 'juggling'"),
+    "empty term": ("{check} --peak 1 2 3 --term ' '", "a claim needs a term"),
+    "peak of two numbers": ("{check} --peak 1 2 --term fear", "needs three numbers in mm, but got '1 2'"),
+    "peak with a letter": ("{check} --peak 1 2 x --term fear", "but got '1 2 x'"),
+    "peak without numbers": ("{check} --peak --term fear", "but got ''; write --peak 54 -54 24"),
+    "peak of four numbers": ("{check} --peak 1 2 3 4 --term fear", "unexpected extra argument"),
+    "peak that is no number": ("{check} --peak nan 2 3 --term fear", "but got nan"),
+    "peak in nanometres": ("{check} --peak 1e9 2 3 --term fear", "within 1000 mm of the origin"),
+    "two peaks": ("{fear} --peak 4 5 6", "(2 peaks) cannot be assessed yet"),
+    "no place": ("{check} --term fear", "exactly one place, but got 0"),
+    "peak and mask": ("{fear} --mask {text}", "exactly one place, but got 2"),
+    "peak and region": ("{fear} --region here", "exactly one place, but got 2"),
+    "missing literature": ("check --literature {absent} {here}", "there is no such literature folder"),
+    "folder that is no literature": ("check --literature {occupied} {here}", "is not a literature"),
+    "file for a literature": ("check --literature {peaks} {here}", "there is no such literature folder"),
+    "missing table": ("check --table {absent} {here}", "there is no such file; check the path"),
+    "table with a wrong count": (
+        "check --table {table} --region here --term fear",
+        "table.csv:2:term_active: 9 active studies are more than the 3",
+    ),
+    "text for a table": ("check --table {plain} {here}", "column 'region' is missing"),
+    "both sources": ("{fear} --table {table}", "give --literature or --table, not both"),
+    "prior of 1": ("{fear} --prior 1", "strictly between 0 and 1, but got 1.0"),
+    "prior of 0": ("{fear} --prior 0", "strictly between 0 and 1, but got 0.0"),
+    "prior in words": ("{fear} --prior often", "or the word prevalence, but got 'often'"),
+    "negative prior": ("{fear} --prior -0.5", "strictly between 0 and 1, but got -0.5"),
+    "level of 1": ("{fear} --level 1", "level must lie strictly between 0 and 1, but got 1.0"),
+    "level of 95": ("{fear} --level 95", "use 0.95 for a 95 % interval"),
+    "level in words": ("{fear} --level high", "'--level'"),
+    "unknown space": ("{fear} --space moon", "space must be MNI152 or Talairach, but got 'moon'"),
+    "unknown transform": ("{fear} --transform magic", "transform must be one of pooled, spm"),
+    "negative radius": ("{fear} --radius -1", "radius_mm must lie between 0 and 200 mm"),
+    "unknown ratio prior": ("{fear} --ratio-prior flat", "ratio prior must be shared or independent"),
+    "ratio limit of 1": ("{fear} --ratio-prior-limit 1", "must be above 1"),
+    "missing term": ("{check} --peak 1 2 3", "Missing option '--term'"),
+    "option without value": ("{check} --peak 1 2 3 --term", "'--term' requires an argument"),
+    "unknown option": ("{fear} --bogus", "No such option: --bogus. See revinf --help."),
+    "unknown command": ("bogus", "No such command 'bogus'. See revinf --help."),
+    "no command": ("", "Missing command. See revinf --help."),
+    "extra word": ("{fear} more", "unexpected extra argument"),
+    "region without a table": ("{check} --region Broca --term fear", "names a place of a table"),
+    "region that is not shipped": ("check --region Broca --term navigation", "has no region 'Broca'"),
+    "peak far from what is shipped": (
+        "check --peak 0 0 120 --term navigation", "farther than its radius of 10 mm",
+    ),
+    "mask with a table": ("check --mask {text} --term navigation", "no peaks to put into a mask"),
+    "missing mask": ("{check} --mask {absent}.nii --term fear", "no such file; give the path of a mask"),
+    "text for a mask": ("{check} --mask {text} --term fear", "cannot be read as a NIfTI image"),
+    "table for a mask": ("{check} --mask {peaks} --term fear", "must be a .nii or .nii.gz file"),
+    "empty mask": ("{check} --mask {empty} --term fear", "the mask is empty"),
+    "missing kinds": ("{fear} --kinds {absent}", "cannot be read"),
+    "kinds without terms": ("{fear} --kinds {kinds}", "column 'term' is missing"),
+    "build without peaks": ("build --annotations {terms} --out {out}", "Missing option '--peaks'"),
+    "build from a missing file": ("build --peaks {absent} --annotations {terms} --out {out}", "no such file"),
+    "build with an unknown sign": ("{build} --out {out} --sign both", "one of all, positive, negative"),
+    "build with half a column": ("{build} --out {out} --column study", "needs OURS=YOURS, but got 'study'"),
+    "build over other files": ("{build} --out {occupied}", "something that is not a literature stands here"),
+    "inspect nothing": ("inspect", "Missing argument 'FOLDER'"),
+    "inspect a missing folder": ("inspect {absent}", "there is no such literature folder"),
+    "terms of a missing table": ("terms --table {absent}", "there is no such file"),
+    "terms of two sources": ("terms --table {table} --literature {lit}", "not both"),
+    "tabulate nowhere": ("{tabulate}", "give either --lattice MM or --regions FILE"),
+    "tabulate twice": ("{tabulate} --lattice 40 --regions {places}", "give either --lattice MM or --regions"),
+    "tabulate a lattice of 0": ("{tabulate} --lattice 0", "spacing_mm must be 1 to 50 mm"),
+    "tabulate a bad place": ("{tabulate} --regions {places}", "places.csv:2:z: 'three' is not a number"),
+    "tabulate an unknown term": ("{tabulate} --lattice 40 --term feer", "did you mean 'fear'"),
+    "demo over other files": ("demo --out {occupied}", "something stands here already"),
 }  # fmt: skip
+SHORT = {
+    "here": "--peak -22 -4 -18 --term fear",
+    "check": "check --literature {lit}",
+    "fear": "check --literature {lit} --peak -22 -4 -18 --term fear",
+    "build": "build --peaks {peaks} --annotations {terms}",
+    "tabulate": "tabulate --literature {lit} --out {out}",
+}
 
 
 def assert_one_line(done, words, code=2):
@@ -129,9 +137,9 @@ def assert_one_line(done, words, code=2):
 
 @pytest.mark.parametrize("name", list(CASES))
 def test_bad_input_ends_with_2_and_one_line(name, revinf, files):
-    args, words = CASES[name]
-    filled = [arg.format(**files) for arg in args]
-    assert_one_line(revinf(*filled), words)
+    typed, words = CASES[name]
+    short = {key: text.format(**files) for key, text in SHORT.items()}
+    assert_one_line(revinf(*shlex.split(typed.format(**files, **short))), words)
     assert not Path(files["out"]).exists()
 
 
@@ -205,9 +213,7 @@ def test_flipped_byte_is_found_by_verify(damaged, revinf):
     raw = bytearray(path.read_bytes())
     raw[-1] ^= 1
     path.write_bytes(raw)
-    assert_one_line(
-        revinf("inspect", damaged, "--verify"), "peak_tenths.npy: the content is not what was built"
-    )
+    assert_one_line(revinf("inspect", damaged, "--verify"), "peak_tenths.npy: the content is not what was built")
 
 
 @pytest.mark.parametrize(

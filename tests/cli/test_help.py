@@ -87,9 +87,7 @@ def test_example_that_needs_files_runs_beside_them(name, revinf, demo, tmp_path,
     assert (done.exit_code, done.stderr) == (0, "")
 
 
-def test_example_of_tabulate_runs_beside_a_small_literature(
-    revinf, invented_literature, tmp_path, monkeypatch
-):
+def test_example_of_tabulate_runs_beside_a_small_literature(revinf, invented_literature, tmp_path, monkeypatch):
     shutil.copytree(invented_literature.folder, tmp_path / "literature")
     monkeypatch.chdir(tmp_path)
     done = revinf("tabulate", *example_of("tabulate"))

@@ -116,9 +116,7 @@ def table(unit: str, term: str, active: set[str]) -> tuple[int, int, int, int]:
 
 def share_of_processes_above(unit: str, place: Point, rate: float) -> float:
     active = hits(unit, place)
-    rates = [
-        len(names & active) / len(names) for term, names in carriers(unit).items() if term in process_terms()
-    ]
+    rates = [len(names & active) / len(names) for term, names in carriers(unit).items() if term in process_terms()]
     return float(np.mean([value >= rate for value in rates]))
 
 
@@ -211,9 +209,7 @@ def test_some_peaks_are_decreases() -> None:
 
 @pytest.mark.parametrize("place", [INSULA, CINGULATE])
 @pytest.mark.parametrize(("unit", "rate"), [("study", 0.10), ("group", 0.20)])
-def test_a_broad_place_is_hit_by_studies_of_nearly_all_processes(
-    place: Point, unit: str, rate: float
-) -> None:
+def test_a_broad_place_is_hit_by_studies_of_nearly_all_processes(place: Point, unit: str, rate: float) -> None:
     assert share_of_processes_above(unit, place, rate) >= 0.80
 
 

@@ -104,9 +104,7 @@ def test_ratio_and_posterior_agree_with_a_plain_grid(invented_literature, recoun
 @pytest.mark.parametrize("level", [0.5, 0.9, 0.95, 0.99])
 def test_rates_are_jeffreys_medians_and_quantiles(invented_literature, recount, level):
     n11, n10, n01, n00 = recount("invented reading", PLACES["B"])
-    answer = assess(
-        Claim(term="invented reading", peaks=[PLACES["B"]]), invented_literature, Choices(level=level)
-    )
+    answer = assess(Claim(term="invented reading", peaks=[PLACES["B"]]), invented_literature, Choices(level=level))
     expected = {
         "active_given_term": (n11, n11 + n10),
         "active_given_other": (n01, n01 + n00),
@@ -152,9 +150,7 @@ def test_prior_prevalence_is_the_share_of_the_studies_and_gives_the_plain_share_
 
 
 @settings(max_examples=60, deadline=None)
-@given(
-    st.integers(0, 40), st.integers(0, 40), st.integers(0, 400), st.integers(0, 400), st.floats(0.001, 0.999)
-)
+@given(st.integers(0, 40), st.integers(0, 40), st.integers(0, 400), st.integers(0, 400), st.floats(0.001, 0.999))
 def test_any_counts_give_an_ordered_answer_in_strict_json(n11, n10, n01, n00, prior):
     import json
 
@@ -208,9 +204,7 @@ def test_term_on_every_study_of_a_literature_is_refused_in_one_line(invented_fil
 def test_unknown_term_names_the_near_misses(invented_literature):
     with pytest.raises(UnknownTermError) as caught:
         assess(Claim(term="invented nameing", peaks=[PLACES["A"]]), invented_literature)
-    assert "the literature 'tiny invented literature' carries the term 'invented nameing'" in str(
-        caught.value
-    )
+    assert "the literature 'tiny invented literature' carries the term 'invented nameing'" in str(caught.value)
     assert caught.value.near[0] == "invented naming"
     assert "\n" not in str(caught.value)
 

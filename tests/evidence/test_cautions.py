@@ -165,9 +165,7 @@ def test_invented_data_does_not_hold_for_a_typed_table(table_of):
     assert caution("invented-data", assess(CLAIM, table_of(SOLID))) is None
 
 
-def test_ungrouped_studies_is_noted_without_and_not_with_a_group(
-    invented_literature, grouped_literature, table_of
-):
+def test_ungrouped_studies_is_noted_without_and_not_with_a_group(invented_literature, grouped_literature, table_of):
     claim = Claim(term="invented naming", peaks=[(-40, 20, 10)])
     noted = caution("ungrouped-studies", assess(claim, invented_literature))
     assert noted.severity == "note"
@@ -222,6 +220,12 @@ def test_cautions_come_most_severe_first_and_each_once(troubled):
     places = [order.index(item.severity) for item in troubled.cautions]
     assert places == sorted(places)
     assert set(places) == {0, 1, 2}
+
+
+def test_graver_caution_comes_first_whatever_family_it_is_of(table_of):
+    answer = at(WHITE, table_of, (0, 63, 0, 388))
+    found = [(item.severity, item.code) for item in answer.cautions]
+    assert found.index(("stop", "thin-evidence")) < found.index(("weigh", "off-brain"))
 
 
 def test_sound_claim_has_no_caution(table_of):

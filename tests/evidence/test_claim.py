@@ -44,9 +44,7 @@ PEAK = (-37.0, -24.0, 51.0)
     ],
 )
 def test_claim_takes_exactly_one_of_peak_mask_and_region(place, number):
-    with pytest.raises(
-        InvalidClaimError, match=f"in exactly one place, but got {number}; give a peak, a mask"
-    ):
+    with pytest.raises(InvalidClaimError, match=f"in exactly one place, but got {number}; give a peak, a mask"):
         Claim(term="fear", **place)
 
 

@@ -6,9 +6,10 @@ import nibabel as nib
 import numpy as np
 import pytest
 
+from revinf.base_rates.places import NamedPlace
 from revinf.base_rates.table import BaseRateTable
 from revinf.base_rates.table_rows import write_table
-from revinf.base_rates.tabulate import NamedSphere, tabulate
+from revinf.base_rates.tabulate import tabulate
 from revinf.evidence.assess import assess
 from revinf.evidence.claim import Claim
 from revinf.evidence.sources import ENVIRONMENT, LiteratureSource, TableSource, choose_source
@@ -45,7 +46,7 @@ def box(tmp_path):
 def table(invented_literature, tmp_path_factory):
     """The tiny literature tabulated at A and B, written and read again."""
     path = tmp_path_factory.mktemp("table") / "counts.csv.gz"
-    places = [NamedSphere("place A", sphere(A, 10)), NamedSphere("place B", sphere(B, 10))]
+    places = [NamedPlace("place A", sphere(A, 10)), NamedPlace("place B", sphere(B, 10))]
     assert write_table(tabulate(invented_literature, places), path) == 6
     return BaseRateTable.read(path)
 
@@ -73,9 +74,7 @@ def test_place_of_a_mask_is_its_name_size_and_centre(invented_literature, box):
 
 @pytest.mark.parametrize(("name", "centre"), [("place A", A), ("PLACE  b", B)])
 @pytest.mark.parametrize("term", ["invented naming", "invented reading", "invented waiting"])
-def test_table_made_from_a_literature_answers_in_the_same_digits(
-    invented_literature, table, name, centre, term
-):
+def test_table_made_from_a_literature_answers_in_the_same_digits(invented_literature, table, name, centre, term):
     direct = assess(Claim(term=term, peaks=[centre], prior=0.2), invented_literature).to_dict()
     for claim in (Claim(term=term, region=name, prior=0.2), Claim(term=term, peaks=[centre], prior=0.2)):
         tabled = assess(claim, table).to_dict()

@@ -116,9 +116,7 @@ def test_a_symbolic_link_is_refused(copy, tmp_path):
     path = copy / "peak_tenths.npy"
     path.rename(tmp_path / "elsewhere.npy")
     path.symlink_to(tmp_path / "elsewhere.npy")
-    assert refusal(copy) == (
-        f"{path}: this array cannot be read (a symbolic link); build the literature again"
-    )
+    assert refusal(copy) == (f"{path}: this array cannot be read (a symbolic link); build the literature again")
 
 
 @pytest.mark.parametrize("name", OFFSETS)
@@ -137,8 +135,7 @@ def test_offsets_that_do_not_fit_are_refused(copy, name, change):
 
     rewrite(copy, name, spoil)
     assert refusal(copy) == (
-        f"{copy / name}.npy: the offsets in this array do not fit what they point into; "
-        "build the literature again"
+        f"{copy / name}.npy: the offsets in this array do not fit what they point into; build the literature again"
     )
 
 
@@ -200,9 +197,7 @@ def changed(folder, change):
 )
 def test_a_manifest_that_is_not_ours_is_refused(copy, text):
     (copy / MANIFEST).write_text(text)
-    assert refusal(copy) == (
-        f"{copy / MANIFEST}: this is not a literature manifest; build the literature again"
-    )
+    assert refusal(copy) == (f"{copy / MANIFEST}: this is not a literature manifest; build the literature again")
 
 
 def test_a_manifest_that_is_not_text_is_refused(copy):

@@ -146,8 +146,7 @@ def test_studies_hitting_a_mask_are_those_of_a_plain_loop_over_closed_boxes(stud
     def in_a_box(peak):
         return any(
             all(
-                abs(p - (10 * o + side * v)) <= 20
-                for p, o, side, v in zip(peak, origin, sides, voxel, strict=True)
+                abs(p - (10 * o + side * v)) <= 20 for p, o, side, v in zip(peak, origin, sides, voxel, strict=True)
             )
             for voxel in voxels
         )

@@ -18,9 +18,7 @@ from revinf.literature.store import array_entries, open_arrays, replacing, write
 def content(folder):
     """Return the bytes of every file under a folder."""
     return {
-        str(path.relative_to(folder)): path.read_bytes()
-        for path in sorted(folder.rglob("*"))
-        if path.is_file()
+        str(path.relative_to(folder)): path.read_bytes() for path in sorted(folder.rglob("*")) if path.is_file()
     }
 
 

@@ -99,9 +99,7 @@ def gauss_legendre(order: int, digits: int) -> list[tuple[mpf, mpf]]:
 def integral(f: Callable[[mpf], mpf], start: mpf, stop: mpf, settings: Settings) -> mpf:
     """Integrate over one panel."""
     middle, half = (start + stop) / 2, (stop - start) / 2
-    return half * mp.fsum(
-        w * f(middle + half * x) for x, w in gauss_legendre(settings.order, settings.digits)
-    )
+    return half * mp.fsum(w * f(middle + half * x) for x, w in gauss_legendre(settings.order, settings.digits))
 
 
 class Posterior:
@@ -273,8 +271,9 @@ Precision    {Settings().digits} decimal digits; Gauss-Legendre of order {Settin
              quantiles to 1e-13 of probability
 Columns      counts n11, n10, n01, n00; prior; level (probability); log_ratio_quantile (no unit)
 Tolerance    1e-6 on the posterior scale at even odds, |logistic(ours) - logistic(reference)|: the promise
-             made for the ends of an interval. The reference itself is far better than that: solved again
-             with finer settings (FINER in the script) it moves by less than 1e-10.
+             made for the ends of an interval. The reference itself is far better than that: of its 60
+             pairs of table and prior, the nine that were solved again with finer settings (FINER in the
+             script; cusps, cliffs, zero cells) move by 2.5e-11 at most.
 """,
         encoding="utf-8",
     )

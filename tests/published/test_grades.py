@@ -27,9 +27,7 @@ def test_a_grade_begins_at_its_published_bound(bound, grade):
         assert grade_of(bound * (1 - 1e-6)) == weaker
 
 
-@pytest.mark.parametrize(
-    ("twice_log", "below", "above"), [(2, "bare", "positive"), (6, "positive", "strong")]
-)
+@pytest.mark.parametrize(("twice_log", "below", "above"), [(2, "bare", "positive"), (6, "positive", "strong")])
 def test_the_bounds_are_the_published_ones_on_the_scale_of_twice_the_log(twice_log, below, above):
     # The paper's other column, 2 ln B10: 0 to 2, 2 to 6, 6 to 10; its two columns agree only roughly.
     assert grade_of(math.exp((twice_log - 0.25) / 2)) == below

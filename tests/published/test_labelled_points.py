@@ -69,9 +69,7 @@ def test_only_subcortical_points_of_seitzman_2020_give_a_label():
     labels = reference.point_labels[160:]
     assert [own.get(region, "") for region in SEITZMAN.regions] == list(labels)
     assert {label for label in labels if label} == set(own.values())
-    assert sum(label == "" for label in labels) == sum(
-        region.startswith("cortex") for region in SEITZMAN.regions
-    )
+    assert sum(label == "" for label in labels) == sum(region.startswith("cortex") for region in SEITZMAN.regions)
 
 
 @pytest.mark.parametrize(("spacing_mm", "count", "margin"), [(4, 16_700, 200), (6, 4_900, 100)])
@@ -101,7 +99,6 @@ def test_the_motor_cortex_and_a_deep_white_point_have_their_tissue():
 
 def test_a_point_of_the_set_is_described_by_its_own_label():
     point = next(p for p, label in zip(rows(DOSENBACH.rois), DOSENBACH.labels, strict=True) if "TPJ" in label)
-    assert (
-        "0 mm from a published point labelled 'TPJ' (160-point set of Dosenbach et al. 2010)"
-        in place_in_words(brain_reference(), point)
+    assert "0 mm from a published point labelled 'TPJ' (160-point set of Dosenbach et al. 2010)" in place_in_words(
+        brain_reference(), point
     )

@@ -73,9 +73,7 @@ def test_the_interval_of_log_r_agrees_to_a_thousandth_of_its_width():
 @pytest.mark.parametrize("case", [(15, 63, 17, 388), (2, 3, 1, 2)])
 def test_a_table_solved_anew_by_mpmath_agrees(case):
     anew = [float(value) for value in Posterior(case, "shared", COARSE).quantiles(("0.025", "0.975"))]
-    np.testing.assert_allclose(
-        posterior(ours(counts_of(case), "shared")[[0, 2]]), posterior(anew), atol=TOLERANCE
-    )
+    np.testing.assert_allclose(posterior(ours(counts_of(case), "shared")[[0, 2]]), posterior(anew), atol=TOLERANCE)
     stored = [reference()[counts_of(case), "shared", level] for level in ("0.025", "0.975")]
     np.testing.assert_allclose(anew, stored, rtol=0, atol=1e-8)
 

@@ -79,9 +79,7 @@ def test_brett_1999_there_and_back_equals_the_two_matrices_by_hand(point):
 
 def test_brett_1999_example_point():
     """Brett's own example, (10, 12, 14) becomes (9.9000, 12.2696, 12.2826): value from memory."""
-    np.testing.assert_allclose(
-        mni_to_talairach((10, 12, 14), "piecewise"), (9.9000, 12.2696, 12.2826), atol=5e-5
-    )
+    np.testing.assert_allclose(mni_to_talairach((10, 12, 14), "piecewise"), (9.9000, 12.2696, 12.2826), atol=5e-5)
 
 
 @given(x=st.integers(-80, 80), y=st.integers(-110, 80), z=st.integers(-70, 90))

@@ -39,9 +39,7 @@ def answers(invented_literature):
         "shipped": assess(
             Claim(term="theory of mind", peaks=[(54, -54, 24)], prior=0.3), choose_source(None, None, {})
         ),
-        "literature": assess(
-            Claim(term="invented naming", peaks=[(-40, 20, 10)], prior=0.05), invented_literature
-        ),
+        "literature": assess(Claim(term="invented naming", peaks=[(-40, 20, 10)], prior=0.05), invented_literature),
         "outside": assess(Claim(term="invented reading", peaks=[(0, 0, 110)]), invented_literature),
     }
 
@@ -134,18 +132,14 @@ def test_screen_says_its_limits_and_that_it_must_not_be_used_on_persons(screen, 
     text = in_one_line(screen(name, width))
     for sentence in (*LIMITS, NO_INDIVIDUALS):
         assert sentence in text
-    assert (
-        "never about a person. They must not be used for clinical, forensic, hiring or lie-detection" in text
-    )
+    assert "never about a person. They must not be used for clinical, forensic, hiring or lie-detection" in text
 
 
 @pytest.mark.parametrize("width", WIDTHS)
 @pytest.mark.parametrize("name", NAMES)
 def test_invented_is_shown_where_and_only_where_the_data_are_invented(answers, screen, name, width):
     text = in_one_line(screen(name, width))
-    assert (
-        ("INVENTED DATA" in text) == answers[name].literature.invented == (name in {"literature", "outside"})
-    )
+    assert ("INVENTED DATA" in text) == answers[name].literature.invented == (name in {"literature", "outside"})
 
 
 @pytest.mark.parametrize("width", WIDTHS)
@@ -164,9 +158,7 @@ def test_figures_of_a_published_table_are_on_its_screen(screen, width):
 def test_table_that_answered_for_a_peak_is_named_with_place_distance_and_radius(answers, screen):
     text = in_one_line(screen("shipped", 104))
     region = answers["shipped"].place.table_region
-    assert (
-        f"the table's place {region.region!r} at {coordinates(region.centre)}, 6.0 mm from the peak" in text
-    )
+    assert f"the table's place {region.region!r} at {coordinates(region.centre)}, 6.0 mm from the peak" in text
     assert "451 studies (here: experiments)" in text
     assert "sphere of 10 mm" in text
 

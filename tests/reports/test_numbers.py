@@ -77,9 +77,7 @@ def test_ratio_is_within_half_a_unit_of_its_third_digit(value):
     assert float(ratio(value).replace(",", "")) == pytest.approx(value, rel=0.0051)
 
 
-@pytest.mark.parametrize(
-    ("value", "text"), [(1.0, "1"), (0.0123, "0.012"), (2.69e-6, "2.7e-06"), (0.05, "0.05")]
-)
+@pytest.mark.parametrize(("value", "text"), [(1.0, "1"), (0.0123, "0.012"), (2.69e-6, "2.7e-06"), (0.05, "0.05")])
 def test_p_value_has_two_significant_digits(value, text):
     assert p_value(value) == text
 

@@ -23,9 +23,7 @@ def printed(capsys, renderables, width=104):
 
 
 @pytest.mark.parametrize("width", [60, 80, 104])
-def test_screen_of_a_literature_says_what_it_holds_and_that_it_is_invented(
-    invented_literature, capsys, width
-):
+def test_screen_of_a_literature_says_what_it_holds_and_that_it_is_invented(invented_literature, capsys, width):
     show(*inspect_screen(invented_literature.summary()), width=width)
     out = capsys.readouterr().out
     assert max(map(len, out.splitlines())) <= width
@@ -90,9 +88,7 @@ def test_demonstration_says_that_it_is_invented_and_what_to_run(capsys, width):
     out = capsys.readouterr().out
     assert max(map(len, out.splitlines())) <= width
     text = " ".join(out.split())
-    assert (
-        "Wrote an INVENTED literature, manuscript and claims to somewhere. Nothing in them is real." in text
-    )
+    assert "Wrote an INVENTED literature, manuscript and claims to somewhere. Nothing in them is real." in text
     assert "revinf build --peaks peaks.csv --annotations annotations.csv" in text
     assert text.count("revinf check --literature literature --peak") == 4
 

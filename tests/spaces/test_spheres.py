@@ -21,8 +21,7 @@ CENTRES = st.tuples(*(st.integers(-1200, 1200),) * 3)
 def brute_force(points, centre, radius: str):
     limit = (Fraction(radius) * 10) ** 2
     return [
-        sum((Fraction(int(p)) - c) ** 2 for p, c in zip(point, centre, strict=True)) <= limit
-        for point in points
+        sum((Fraction(int(p)) - c) ** 2 for p, c in zip(point, centre, strict=True)) <= limit for point in points
     ]
 
 

@@ -87,9 +87,7 @@ def test_the_posterior_interval_is_the_image_of_the_ratio_s(prior, values):
 
 def test_without_a_ratio_there_is_no_posterior_but_the_prior_is_still_checked():
     assert posterior_estimate(0.5, None) is None
-    with pytest.raises(
-        InvalidProbabilityError, match=r"^prior must lie strictly between 0 and 1, but got 1;"
-    ):
+    with pytest.raises(InvalidProbabilityError, match=r"^prior must lie strictly between 0 and 1, but got 1;"):
         posterior_estimate(1, None)
 
 
@@ -108,9 +106,7 @@ def test_the_observed_posterior_is_bayes_rule_on_the_observed_ratio(table, prior
     assert observed_posterior(table, prior) == pytest.approx(expected, rel=1e-9)
 
 
-@pytest.mark.parametrize(
-    "table", [Counts(0, 5, 0, 5), Counts(0, 0, 3, 5), Counts(3, 5, 0, 0), Counts(0, 0, 0, 0)]
-)
+@pytest.mark.parametrize("table", [Counts(0, 5, 0, 5), Counts(0, 0, 3, 5), Counts(3, 5, 0, 0), Counts(0, 0, 0, 0)])
 def test_without_active_studies_or_a_side_nothing_was_observed(table):
     assert observed_posterior(table) is None
     assert observed_posterior(table, 0.5) is None
@@ -158,9 +154,7 @@ def test_a_target_outside_is_refused(target):
 
 @pytest.mark.parametrize("ratio", [-1.0, float("nan")])
 def test_a_ratio_that_is_none_is_refused(ratio):
-    with pytest.raises(
-        InvalidCountError, match=f"ratio must not be negative, but got {ratio}; check the rates"
-    ):
+    with pytest.raises(InvalidCountError, match=f"ratio must not be negative, but got {ratio}; check the rates"):
         posterior_probability(0.5, ratio)
     with pytest.raises(InvalidCountError, match=f"ratio must be above 0, but got {ratio}; check the rates"):
         required_prior(0.5, ratio)

@@ -77,13 +77,9 @@ def test_a_probability_inside_is_returned_unchanged(value):
 def test_a_probability_outside_is_refused_with_name_value_and_remedy(value):
     with pytest.raises(InvalidProbabilityError) as caught:
         check_probability(value, "target", "use 0.8 or 0.95")
-    assert str(caught.value) == (
-        f"target must lie strictly between 0 and 1, but got {value!r}; use 0.8 or 0.95"
-    )
+    assert str(caught.value) == (f"target must lie strictly between 0 and 1, but got {value!r}; use 0.8 or 0.95")
 
 
 def test_a_level_outside_is_refused():
-    with pytest.raises(
-        InvalidProbabilityError, match=r"^level must .* but got 95; use 0\.95 for a 95 % interval$"
-    ):
+    with pytest.raises(InvalidProbabilityError, match=r"^level must .* but got 95; use 0\.95 for a 95 % interval$"):
         check_level(95)

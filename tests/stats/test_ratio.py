@@ -123,9 +123,7 @@ def test_the_order_of_a_list_does_not_matter(tables, random, prior):
 @few
 @given(st.lists(tables(), min_size=1, max_size=8), st.sampled_from(PRIORS))
 def test_a_table_has_the_same_digits_alone_and_in_company(tables, prior):
-    assert likelihood_ratios(tables, prior=prior) == [
-        likelihood_ratio(table, prior=prior) for table in tables
-    ]
+    assert likelihood_ratios(tables, prior=prior) == [likelihood_ratio(table, prior=prior) for table in tables]
 
 
 def test_company_that_is_hard_to_solve_leaves_the_digits_alone():
@@ -167,9 +165,7 @@ def test_independent_rates_see_an_effect_where_there_is_no_evidence():
 
 
 def test_the_limit_of_the_prior_does_not_touch_independent_rates():
-    assert likelihood_ratio(BROCA, prior="independent", limit=5) == likelihood_ratio(
-        BROCA, prior="independent"
-    )
+    assert likelihood_ratio(BROCA, prior="independent", limit=5) == likelihood_ratio(BROCA, prior="independent")
 
 
 @given(full_tables())
@@ -190,9 +186,7 @@ def test_with_many_studies_the_estimate_nears_the_observed_ratio(n_term, n_other
     for prior in PRIORS:
         ratio = likelihood_ratio(table, prior=prior)
         assert ratio.covers(observed_ratio(table))
-        assert math.log(ratio.estimate / observed_ratio(table)) == pytest.approx(
-            0, abs=3 / min(n_term, n_other)
-        )
+        assert math.log(ratio.estimate / observed_ratio(table)) == pytest.approx(0, abs=3 / min(n_term, n_other))
 
 
 @pytest.mark.parametrize("limit", [1, 0.05, -20, 2e9, math.inf, math.nan])
@@ -213,9 +207,7 @@ def test_an_unknown_prior_is_refused():
 
 @pytest.mark.parametrize("level", [0, 1, 95, math.nan])
 def test_a_level_outside_is_refused(level):
-    with pytest.raises(
-        InvalidProbabilityError, match=rf"^level must .* but got {level}; use 0\.95 for a 95 %"
-    ):
+    with pytest.raises(InvalidProbabilityError, match=rf"^level must .* but got {level}; use 0\.95 for a 95 %"):
         likelihood_ratio(BROCA, level=level)
 
 

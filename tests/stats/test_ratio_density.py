@@ -98,9 +98,7 @@ def test_swapping_is_a_law_of_the_integral_too():
     for prior in ("shared", "independent"):
         forward = log_ratio_posterior(as_array(*tables), LEVELS, prior, 20.0)
         backward = log_ratio_posterior(as_array(*(t.swapped() for t in tables)), LEVELS, prior, 20.0)
-        np.testing.assert_allclose(
-            special.expit(forward), special.expit(-backward[:, ::-1]), rtol=0, atol=1e-6
-        )
+        np.testing.assert_allclose(special.expit(forward), special.expit(-backward[:, ::-1]), rtol=0, atol=1e-6)
 
 
 @pytest.mark.parametrize("table", [Counts(0, 63, 0, 388), Counts(1, 999_999, 0, 10**6)])

@@ -38,8 +38,7 @@ def off_brain(
         code="off-brain",
         severity="weigh",
         message=(
-            f"The peak lies {where} of the standard brain, not in grey matter, which begins "
-            f"{grey_mm:.0f} mm away."
+            f"The peak lies {where} of the standard brain, not in grey matter, which begins {grey_mm:.0f} mm away."
         ),
         evidence=evidence,
     )

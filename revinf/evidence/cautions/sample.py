@@ -41,8 +41,7 @@ def prior_driven(ratio: Estimate, prior: float, limits: Thresholds) -> Caution |
         code="prior-driven",
         severity="weigh",
         message=(
-            "The likelihood ratio's interval includes 1, so the posterior mostly repeats the prior of "
-            f"{prior:.2g}."
+            f"The likelihood ratio's interval includes 1, so the posterior mostly repeats the prior of {prior:.2g}."
         ),
         evidence={"prior": prior, "ratio_low": ratio.low, "ratio_high": ratio.high},
     )

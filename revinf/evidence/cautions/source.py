@@ -2,9 +2,19 @@
 
 from __future__ import annotations
 
-from revinf.evidence.cautions.caution import Caution
+from collections.abc import Sequence
 
-__all__ = ["invented_data", "small_default", "ungrouped_studies"]
+from revinf.evidence.cautions.caution import Caution
+from revinf.evidence.cautions.thresholds import Thresholds
+
+__all__ = [
+    "invented_data",
+    "mixed_direction",
+    "own_study_counted",
+    "small_default",
+    "uneven_literature",
+    "ungrouped_studies",
+]
 
 
 def invented_data(invented: bool) -> Caution | None:
@@ -47,4 +57,59 @@ def small_default(shipped: bool, n_studies: int, largest_share: float) -> Cautio
             "with revinf build."
         ),
         evidence={"n_studies": n_studies, "largest_share": largest_share},
+    )
+
+
+def uneven_literature(
+    largest_term: str, largest_share: float, effective: float, n_processes: int, limits: Thresholds
+) -> Caution | None:
+    """Warn where a few processes dominate the literature, and with them every base rate."""
+    dominated = largest_share > limits.uneven_share
+    if n_processes < 2 or not (dominated or effective < limits.uneven_effective * n_processes):
+        return None
+    return Caution(
+        code="uneven-literature",
+        severity="weigh",
+        message=(
+            f"This literature is uneven: {largest_term!r} labels {largest_share:.0%} of the studies, and its "
+            f"{n_processes} processes count as {effective:.1f}; base rates and 'the others' inherit that."
+        ),
+        evidence={
+            "largest_term": largest_term,
+            "largest_share": largest_share,
+            "effective_processes": effective,
+            "n_processes": n_processes,
+        },
+    )
+
+
+def mixed_direction(negative_peaks: int, decrease_terms: Sequence[str]) -> Caution | None:
+    """Note that decreases are counted as activation."""
+    if not negative_peaks and not decrease_terms:
+        return None
+    parts = []
+    if negative_peaks:
+        parts.append(f"{negative_peaks} peaks with a negative statistic")
+    if decrease_terms:
+        parts.append("the studies of " + ", ".join(repr(term) for term in decrease_terms))
+    return Caution(
+        code="mixed-direction",
+        severity="note",
+        message=f"Decreases are counted as activation: {' and '.join(parts)}.",
+        evidence={"negative_peaks": negative_peaks, "decrease_terms": list(decrease_terms)},
+    )
+
+
+def own_study_counted(studies: Sequence[str]) -> Caution | None:
+    """Warn where the claim's peaks are a counted study's own, which then speaks for itself."""
+    if not studies:
+        return None
+    return Caution(
+        code="own-study-counted",
+        severity="weigh",
+        message=(
+            f"The claim's coordinates are those of the counted study {studies[0]!r}; a study must not be evidence "
+            "for its own claim."
+        ),
+        evidence={"studies": list(studies)},
     )

@@ -1,10 +1,12 @@
-"""Is the claimed term a process at all?"""
+"""Is the claimed term a process at all, and does any study carry it?"""
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from revinf.evidence.cautions.caution import Caution
 
-__all__ = ["not_a_process"]
+__all__ = ["not_a_process", "term_unlabelled"]
 
 
 def not_a_process(term: str, what: str) -> Caution | None:
@@ -19,4 +21,17 @@ def not_a_process(term: str, what: str) -> Caution | None:
             "inference."
         ),
         evidence={"term": term, "kind": what},
+    )
+
+
+def term_unlabelled(term: str, n_studies: int, near: Sequence[str] = ()) -> Caution | None:
+    """Stop where no counted study carries the term: there is nothing to count."""
+    if n_studies:
+        return None
+    hint = f"; it has {' or '.join(repr(name) for name in near)}" if near else ""
+    return Caution(
+        code="term-unlabelled",
+        severity="stop",
+        message=f"No counted study carries the term {term!r}{hint}.",
+        evidence={"term": term, "near": list(near)},
     )

@@ -19,29 +19,50 @@ from revinf.knowledge import VERSION as __version__
 
 if TYPE_CHECKING:
     from revinf.base_rates.table import BaseRateTable
+    from revinf.evidence.asked_region import AskedRegion
     from revinf.evidence.assess import assess
     from revinf.evidence.assessment import Assessment
+    from revinf.evidence.audit import Audit, audit
     from revinf.evidence.choices import Choices
     from revinf.evidence.claim import Claim
+    from revinf.evidence.claims_table import claims_from_frame, read_claims
+    from revinf.evidence.profile import Profile, profile
+    from revinf.evidence.sources import choose_source
     from revinf.literature.building import build_literature
     from revinf.literature.import_options import ImportOptions
     from revinf.literature.literature import Literature
     from revinf.literature.manifest import Description
 
 __all__ = [
+    "AskedRegion",
     "Assessment",
+    "Audit",
     "BaseRateTable",
     "Choices",
     "Claim",
     "Description",
     "ImportOptions",
     "Literature",
+    "Profile",
     "__version__",
     "assess",
+    "audit",
     "build_literature",
+    "choose_source",
+    "claims_from_frame",
+    "profile",
+    "read_claims",
 ]
 
 _HOMES = {
+    "AskedRegion": "revinf.evidence.asked_region",
+    "Audit": "revinf.evidence.audit",
+    "Profile": "revinf.evidence.profile",
+    "audit": "revinf.evidence.audit",
+    "choose_source": "revinf.evidence.sources",
+    "claims_from_frame": "revinf.evidence.claims_table",
+    "profile": "revinf.evidence.profile",
+    "read_claims": "revinf.evidence.claims_table",
     "Assessment": "revinf.evidence.assessment",
     "BaseRateTable": "revinf.base_rates.table",
     "Choices": "revinf.evidence.choices",

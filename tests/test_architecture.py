@@ -100,9 +100,7 @@ def test_declared_layers_hold() -> None:
     command = Path(sysconfig.get_path("scripts")) / "lint-imports"
     if not command.exists():
         pytest.skip("import-linter is not installed; it comes with the test extra")
-    done = subprocess.run(
-        [command, "--no-cache"], cwd=ROOT, capture_output=True, text=True, check=False, timeout=120
-    )
+    done = subprocess.run([command, "--no-cache"], cwd=ROOT, capture_output=True, text=True, check=False, timeout=120)
     assert done.returncode == 0, done.stdout + done.stderr
 
 

@@ -103,18 +103,30 @@ def chosen_places(literature: Literature, request: PlaceRequest) -> list[NamedPl
     Raises
     ------
     InvalidClaimError
-        If not exactly one of lattice, list and atlas is named.
+        If not exactly one of lattice, list and atlas is named, or a renamed column is in no file.
     """
     ways = (request.spacing_mm, request.listed, request.atlas)
     if sum(way is not None for way in ways) != 1 or (request.labels and not request.atlas):
         raise InvalidClaimError(
             "places come from one source; give --lattice MM, --regions FILE, or --atlas FILE with --labels FILE"
         )
+    _check_renamed(request)
     if request.atlas is not None:
         return atlas_places(request.atlas, request.labels, rename=request.rename)
     if request.listed is not None:
         return listed_places(request.listed, request.radius_mm, rename=request.rename, transform=request.transform)
     return lattice_places(literature, float(request.spacing_mm or 0), request.radius_mm)
+
+
+def _check_renamed(request: PlaceRequest) -> None:
+    """Refuse a column that the user named and no file has: it would be ignored in silence."""
+    files = [file for file in (request.listed, request.labels) if file is not None]
+    headers = {column for file in files for column in open_delimited(file).columns} if request.rename else set()
+    for ours, theirs in request.rename.items():
+        if theirs not in headers:
+            raise InvalidClaimError(
+                f"no file has the column {theirs!r} that --column {ours}={theirs} names; check its spelling"
+            )
 
 
 def listed_places(
@@ -194,9 +206,7 @@ def _listed_sphere(texts: dict[str, str], radius_mm: float, transform: str, path
         raise InputFileError(str(error), path=path, row=line, column=column) from None
 
 
-def atlas_places(
-    path: Path, labels: Path | None = None, *, rename: dict[str, str] | None = None
-) -> list[NamedPlace]:
+def atlas_places(path: Path, labels: Path | None = None, *, rename: dict[str, str] | None = None) -> list[NamedPlace]:
     """Read the parcels of an atlas image, and their names.
 
     Parameters
@@ -220,9 +230,9 @@ def atlas_places(
         If a file cannot be used, a value is no whole number, or a name stands twice.
     """
     names = {} if labels is None else _parcel_names(labels, rename)
-    places = [NamedPlace(names.get(number, mask.name), mask) for number, mask in load_parcels(path)]
-    unused = sorted(set(names) - {number for number, _ in load_parcels(path)})
-    if len(unused) == len(names) and names:
+    parcels = list(load_parcels(path))
+    places = [NamedPlace(names.get(number, mask.name), mask) for number, mask in parcels]
+    if names and not set(names) & {number for number, _ in parcels}:
         raise InputFileError(
             f"no value of this table is a parcel of {path.name}; check that the two belong together", path=labels
         )
@@ -239,7 +249,7 @@ def _parcel_names(path: Path, rename: dict[str, str] | None) -> dict[int, str]:
     for block in table.blocks():
         for value, region, line in zip(block["value"], block["region"], block[LINE], strict=True):
             text, name = str(value).strip(), str(region).strip()
-            if not (text.isascii() and text.isdigit()) or not name or int(text) in names:
+            if not (text.isascii() and text.isdigit() and len(text) <= 15) or not name or int(text) in names:
                 raise InputFileError(
                     f"value {text[:40]!r} is no whole number, stands twice, or has no name; keep one row a parcel",
                     path=path,

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 from revinf.exceptions import InputFileError
 
 if TYPE_CHECKING:
-    from revinf.base_rates.table_rows import TableRow
+    from revinf.base_rates.table_row import TableRow
 
 __all__ = ["TableChecks", "region_key"]
 

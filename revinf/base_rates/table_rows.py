@@ -15,9 +15,9 @@ import zlib
 from collections.abc import Iterable, Iterator
 from functools import lru_cache
 from pathlib import Path
-from typing import NamedTuple
 
 from revinf.base_rates.table_checks import TableChecks
+from revinf.base_rates.table_row import TableRow
 from revinf.exceptions import InputFileError
 from revinf.literature.spelling import normalise_term
 
@@ -26,20 +26,6 @@ __all__ = ["COLUMNS", "COUNT_COLUMNS", "TableRow", "read_rows", "write_table"]
 COUNT_COLUMNS = ("term_active", "term_total", "other_active", "other_total")
 COLUMNS = ("region", "term", *COUNT_COLUMNS, "x", "y", "z", "radius_mm", "source")
 _SIZE_LIMIT = 1_000_000_000
-
-
-class TableRow(NamedTuple):
-    """One region and term; a light tuple, since a table has tens of thousands of rows."""
-
-    region: str
-    term: str
-    term_active: int
-    term_total: int
-    other_active: int
-    other_total: int
-    centre: tuple[float, float, float] | None = None
-    radius_mm: float | None = None
-    source: str = ""
 
 
 def read_rows(path: Path) -> tuple[list[TableRow], str]:

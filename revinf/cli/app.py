@@ -7,6 +7,7 @@ from typing import Annotated
 
 import typer
 
+from revinf.cli.audit import audit
 from revinf.cli.build import build
 from revinf.cli.check import check
 from revinf.cli.demo import demo
@@ -49,6 +50,7 @@ def _main(
 
 app.command(cls=PeakCommand)(check)
 app.command(cls=PeakCommand)(profile)
+app.command()(audit)
 app.command()(build)
 app.command()(inspect)
 app.command()(terms)

@@ -15,9 +15,7 @@ __all__ = ["build"]
 def build(
     peaks: Annotated[
         Path,
-        typer.Option(
-            "--peaks", metavar="FILE", help="Table of peaks: study, x, y, z; optionally space, stat, group."
-        ),
+        typer.Option("--peaks", metavar="FILE", help="Table of peaks: study, x, y, z; optionally space, stat, group."),
     ],
     annotations: Annotated[
         Path,

@@ -65,9 +65,7 @@ def check(
     ] = None,
     rival: Annotated[
         list[str] | None,
-        typer.Option(
-            "--rival", metavar="TERM", help="Show this rival in any case. Repeatable.", show_default=False
-        ),
+        typer.Option("--rival", metavar="TERM", help="Show this rival in any case. Repeatable.", show_default=False),
     ] = None,
     exclude: Annotated[
         list[str] | None,

@@ -11,9 +11,9 @@ __all__ = ["demo"]
 
 
 def demo(
-    out: Annotated[
-        Path, typer.Option("--out", metavar="FOLDER", help="Where to write; must be new or empty.")
-    ] = Path("revinf-demo"),
+    out: Annotated[Path, typer.Option("--out", metavar="FOLDER", help="Where to write; must be new or empty.")] = Path(
+        "revinf-demo"
+    ),
 ) -> None:
     """Write an invented literature, manuscript and claims to try things on.
 

@@ -57,9 +57,7 @@ def tabulate(
     radius: Radius = 10.0,
     term: Annotated[
         list[str] | None,
-        typer.Option(
-            "--term", metavar="TERM", help="Only this term. Repeatable. [default: all]", show_default=False
-        ),
+        typer.Option("--term", metavar="TERM", help="Only this term. Repeatable. [default: all]", show_default=False),
     ] = None,
     column: NamedColumns = None,
     transform: Transform = "pooled",

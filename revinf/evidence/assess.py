@@ -82,8 +82,7 @@ def assess(claim: Claim, source: Literature | BaseRateTable | Source, choices: C
     ratio, share = settings.solve(counts), prevalence(counts)
     if ratio is None or share is None:
         raise InvalidClaimError(
-            f"every counted study carries {claim.term!r}, so there is nothing to compare with; use a wider "
-            "literature"
+            f"every counted study carries {claim.term!r}, so there is nothing to compare with; use a wider literature"
         )
     prior = share if claim.prior == "prevalence" else float(claim.prior)
     selectivity = select(
@@ -135,9 +134,7 @@ def _contrasted(
             raise InvalidClaimError("a context needs the studies themselves; use a literature, not a table")
         return assessment
     single, joint = len(claim.peaks) == 1, assessment.likelihood_ratio.value
-    own = (
-        [study for study in _own_studies(claim, asked) if studies.carries(claim.term)[study]] if claim.peaks else []
-    )
+    own = [study for study in _own_studies(claim, asked) if studies.carries(claim.term)[study]] if claim.peaks else []
     return replace(
         assessment,
         reporting_volume=reporting_volume(claim.term, studies, assessment.counts, settings),

@@ -111,8 +111,7 @@ class Assessment:
             "posterior": _posterior(self.posterior),
             "posterior_at_prevalence": _posterior(self.posterior_at_prevalence),
             "required_prior": {
-                f"{item.target:.2f}": {"estimate": item.estimate, "at_low": item.at_low}
-                for item in self.required_prior
+                f"{item.target:.2f}": {"estimate": item.estimate, "at_low": item.at_low} for item in self.required_prior
             },
             "association": asdict(self.association),
             "selectivity": chosen.to_dict(),

@@ -103,9 +103,7 @@ def _above_own_rate(
     share = background.study_locations / len(background.location_hits)
     own_rate = studies.literature.term_means(share)
     positions = np.flatnonzero(is_process)
-    rates = jeffreys_rates(
-        [(int(counts.term_active[i]), int(counts.term_total[i])) for i in positions], level=level
-    )
+    rates = jeffreys_rates([(int(counts.term_active[i]), int(counts.term_total[i])) for i in positions], level=level)
     return sum(
         rate is not None and bool(rate.low > own_rate[position])
         for position, rate in zip(positions.tolist(), rates, strict=True)

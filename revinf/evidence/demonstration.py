@@ -42,9 +42,7 @@ def write_demonstration(out: str | Path) -> Path:
     target = Path(out)
     try:
         if target.exists() and (not target.is_dir() or any(target.iterdir())):
-            raise InputFileError(
-                "something stands here already; name a new or empty folder with --out", path=target
-            )
+            raise InputFileError("something stands here already; name a new or empty folder with --out", path=target)
         target.mkdir(parents=True, exist_ok=True)
         for name in FILES:
             shutil.copyfile(demo_folder() / name, target / name)

@@ -71,9 +71,7 @@ def place_of_mask(mask: Mask) -> Place:
         hemisphere=hemisphere(mask.centre_mm),
         tissue=None,
         nearest=None,
-        words=(
-            f"mask {mask.name}, {int(mask.ijk_inside.sum())} voxels, centre of gravity ({x:.0f}, {y:.0f}, {z:.0f})"
-        ),
+        words=(f"mask {mask.name}, {int(mask.ijk_inside.sum())} voxels, centre of gravity ({x:.0f}, {y:.0f}, {z:.0f})"),
     )
 
 

@@ -14,6 +14,7 @@ from revinf.evidence.claim import Claim
 from revinf.evidence.grading import Direction, direction_of, headline_grade
 from revinf.evidence.ratio_settings import RatioSettings
 from revinf.evidence.sources import Answer, LiteratureSource, Source
+from revinf.exceptions import SpaceError
 from revinf.stats.bayes import posterior_estimate
 from revinf.stats.estimates import Counts, Estimate
 from revinf.stats.ratio import RatioPrior
@@ -126,10 +127,12 @@ def robustness_of(asked: Asked, source: Source, answer: Answer, kin: Sequence[in
     claim, studies = asked.claim, answer.studies
     plans: list[_Plan] = []
     if isinstance(source, LiteratureSource) and claim.peaks:
-        plans += [
-            _Plan(choice, setting, source.studies(other, absent=claim.absent).counts(claim.term))
-            for choice, setting, other in _moved(claim)
-        ]
+        for choice, setting, base, change in _moved(claim):
+            try:
+                counts = source.studies(replace(base, **change), absent=claim.absent).counts(claim.term)
+            except SpaceError:  # a peak at the far end of space, moved out of it
+                continue
+            plans.append(_Plan(choice, setting, counts))
     plans += [_Plan("prior", f"{prior:g}", asked.counts, prior=prior) for prior in PRIORS]
     plans += [
         _Plan(
@@ -159,18 +162,18 @@ class _Plan:
     settings: RatioSettings | None = None
 
 
-def _moved(claim: Claim) -> Iterable[tuple[str, str, Claim]]:
-    """Yield the claim at other radii, in the other space, and at shifted peaks."""
+def _moved(claim: Claim) -> Iterable[tuple[str, str, Claim, dict[str, Any]]]:
+    """Yield the claim and what to change: other radii, the other space, and shifted peaks."""
     for radius in RADII_MM:
-        yield "radius", f"{radius:g} mm", replace(claim, radius_mm=radius)
+        yield "radius", f"{radius:g} mm", claim, {"radius_mm": radius}
     other = "Talairach" if claim.space == "MNI152" else "MNI152"
-    yield "space", f"read as {other}", replace(claim, space=other)
+    yield "space", f"read as {other}", claim, {"space": other}
     here = replace(claim, peaks=claim.mni_peaks(), space="MNI152")
     for distance in JITTERS_MM:
         for axis, name in enumerate("xyz"):
             for sign in (-1, 1):
                 moved = [_shifted(point, axis, sign * distance) for point in here.mni_peaks()]
-                yield "peak", f"{name} {sign * distance:+g} mm", replace(here, peaks=moved)
+                yield "peak", f"{name} {sign * distance:+g} mm", here, {"peaks": moved}
 
 
 def _shifted(point: Point, axis: int, distance: float) -> Point:
@@ -186,8 +189,7 @@ def _solve(asked: Asked, plans: list[_Plan]) -> Iterable[RobustnessRow]:
     for plan in plans:
         by_settings.setdefault(plan.settings or asked.settings, []).append(plan.counts)
     solved = {
-        settings: dict(zip(tables, settings.solve_all(tables), strict=True))
-        for settings, tables in by_settings.items()
+        settings: dict(zip(tables, settings.solve_all(tables), strict=True)) for settings, tables in by_settings.items()
     }
     base = solved[asked.settings][asked.counts]
     for plan in plans:

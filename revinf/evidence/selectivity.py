@@ -139,9 +139,9 @@ def select(
     ranked = np.flatnonzero(is_process & ~kin)
     fit = fit_beta_binomial(counts.term_active[ranked], counts.term_total[ranked])
     shrunk = np.full(len(counts.terms), np.nan)
-    shown_terms = np.union1d(
-        np.flatnonzero(is_process | (kin & (counts.term_total > 0))), [claimed, *named]
-    ).astype(np.int64)
+    shown_terms = np.union1d(np.flatnonzero(is_process | (kin & (counts.term_total > 0))), [claimed, *named]).astype(
+        np.int64
+    )
     shrunk[shown_terms] = shrunk_rates(counts.term_active[shown_terms], counts.term_total[shown_terms], fit)
     order = [
         int(ranked[i])

@@ -81,9 +81,7 @@ def read_annotations(options: ImportOptions, group_column: str, report: ImportRe
 class _LabelReader:
     """Takes the table block by block."""
 
-    def __init__(
-        self, options: ImportOptions, table: DelimitedFile, group_column: str, report: ImportReport
-    ) -> None:
+    def __init__(self, options: ImportOptions, table: DelimitedFile, group_column: str, report: ImportReport) -> None:
         self.options, self.table, self.report = options, table, report
         self.group_column = group_column
         self.long = "term" in table.columns
@@ -181,6 +179,4 @@ class _LabelReader:
             notice("spellings", f"{name}: {merged} spellings were merged with another of the same term")
         if self.light:
             notice("weights", f"{name}: {self.light} labels are too light to count and were left out")
-        return LabelRows(
-            study_ids=self.study_numbering.names, terms=terms, study=study, term=term, group=self.group
-        )
+        return LabelRows(study_ids=self.study_numbering.names, terms=terms, study=study, term=term, group=self.group)

@@ -93,9 +93,7 @@ def read_peaks(options: ImportOptions, group_column: str, report: ImportReport, 
 class _PeakReader:
     """Takes the table block by block, so that memory holds packed arrays and one block of text."""
 
-    def __init__(
-        self, options: ImportOptions, table: DelimitedFile, group_column: str, report: ImportReport
-    ) -> None:
+    def __init__(self, options: ImportOptions, table: DelimitedFile, group_column: str, report: ImportReport) -> None:
         self.options, self.table, self.report = options, table, report
         self.group_column = group_column
         self.numbering = Numbering()

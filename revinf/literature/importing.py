@@ -61,9 +61,7 @@ class ImportedStudies:
     n_negative: int
 
 
-def import_studies(
-    options: ImportOptions, progress: Progress | None = None
-) -> tuple[ImportedStudies, ImportReport]:
+def import_studies(options: ImportOptions, progress: Progress | None = None) -> tuple[ImportedStudies, ImportReport]:
     r"""Read the files and return the studies that count.
 
     Parameters
@@ -232,9 +230,7 @@ def _refusals_in_words(report: ImportReport) -> str:
 def _notice_ungrouped(ungrouped: set[str], group_of: dict[str, str], report: ImportReport) -> None:
     """Say which studies no group takes in, where groups are merged."""
     if ungrouped:
-        report.notice(
-            "ungrouped", f"{len(ungrouped)} studies have no group; each is merged with nothing but itself"
-        )
+        report.notice("ungrouped", f"{len(ungrouped)} studies have no group; each is merged with nothing but itself")
     shared = sorted(ungrouped & set(group_of.values()))
     if shared:
         report.notice(
@@ -244,9 +240,7 @@ def _notice_ungrouped(ungrouped: set[str], group_of: dict[str, str], report: Imp
         )
 
 
-def _notice_uncounted(
-    options: ImportOptions, with_peaks: set[str], with_terms: set[str], report: ImportReport
-) -> None:
+def _notice_uncounted(options: ImportOptions, with_peaks: set[str], with_terms: set[str], report: ImportReport) -> None:
     """Say how many studies are left out, and why; `studies` here are the units of counting."""
     unlabelled, empty = len(with_peaks - with_terms), len(with_terms - with_peaks)
     report.left_out["without a term"] = unlabelled

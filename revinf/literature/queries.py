@@ -232,9 +232,7 @@ class Queries:
             Hits by location and by study.
         """
         if radius_mm == BACKGROUND_RADIUS_MM:
-            return Background(
-                location_hits=self._arrays["grid_hits"], study_locations=self._arrays["grid_study_hits"]
-            )
+            return Background(location_hits=self._arrays["grid_hits"], study_locations=self._arrays["grid_study_hits"])
         return compute_background(
             self._arrays["peak_tenths"],
             self._arrays["peak_study"],

@@ -142,7 +142,6 @@ class ImportReport:
                 for file, reason, rows, lines in self.by_reason()
             ],
             "notices": [
-                {"code": item.code, "message": item.message, "first_lines": list(item.lines)}
-                for item in self.notices
+                {"code": item.code, "message": item.message, "first_lines": list(item.lines)} for item in self.notices
             ],
         }

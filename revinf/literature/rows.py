@@ -192,9 +192,7 @@ def _renamed(names: list[str], rename: Mapping[str, str], path: Path) -> tuple[s
     columns = [ours.get(name, name) for name in names]
     for position, name in enumerate(columns):
         if name in columns[:position]:
-            raise InputFileError(
-                f"column {name!r} stands twice in the header; rename one of them", path=path, row=1
-            )
+            raise InputFileError(f"column {name!r} stands twice in the header; rename one of them", path=path, row=1)
     return tuple(columns)
 
 

@@ -19,7 +19,7 @@ from revinf.reports.numbers import (
 )
 from revinf.reports.rivals_screen import rivals_screen
 from revinf.reports.terminal import hanging, heading, plain_table
-from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, claim_words, grade_line
+from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, active_words, claim_words, grade_line
 
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
@@ -59,7 +59,7 @@ def check_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
         *_counts(assessment, drawn),
         *_ratio(assessment, drawn),
         *_posteriors(assessment, drawn),
-        *rivals_screen(assessment),
+        *rivals_screen(assessment, width=width),
         *_cautions(assessment),
         *_closing(),
     ]
@@ -69,7 +69,7 @@ def _opening(assessment: Assessment) -> list[Any]:
     """Return claim, place and source."""
     claim, place, facts = assessment.claim, assessment.place, assessment.literature
     rows = [("Claim", claim_words(claim.term, _where(assessment)))]
-    if place.hemisphere is not None:
+    if place.hemisphere is not None or len(claim.peaks) > 1:
         rows.append(("Place", place.words))
     if place.table_region is not None:
         table = place.table_region
@@ -93,14 +93,19 @@ def _opening(assessment: Assessment) -> list[Any]:
 def _where(assessment: Assessment) -> str:
     """Say where the activity was."""
     claim = assessment.claim
+    what = _what(assessment)
     if claim.region_kind == "mask":
-        return "no activity in a mask" if claim.absent else "activity in a mask"
+        return f"{what} in a mask"
     if not claim.peaks:
-        return f"activity in {assessment.place.words}"
-    what = "no activity" if claim.absent else "activity"
+        return f"{what} in {assessment.place.words}"
     points = " and ".join(coordinates(peak) for peak in claim.peaks)
     where = f"{what} at {points} {claim.space}"
     return where if claim.region_kind == "table" else f"{where}, within {claim.radius_mm:g} mm"
+
+
+def _what(assessment: Assessment) -> str:
+    """Say what the claim rests on."""
+    return "no activity" if assessment.claim.absent else "activity"
 
 
 def _counts(assessment: Assessment, drawn: bool) -> list[Any]:
@@ -115,8 +120,16 @@ def _counts(assessment: Assessment, drawn: bool) -> list[Any]:
         ),
         _rate_row("all others", counts.other_active, counts.other_total, rates.active_given_other),
     ]
-    header = ["studies", "active here", f"rate ({percent(assessment.level)} interval)", _axis("0", "1")]
-    return [heading("How often is this place active?"), _table(header, rows, drawn, right=(1,))]
+    header = [
+        "studies",
+        active_words(assessment.claim.absent),
+        f"rate ({percent(assessment.level)} interval)",
+        _axis("0", "1"),
+    ]
+    return [
+        heading(f"How often is this place {active_words(assessment.claim.absent).removesuffix(' here')}?"),
+        _table(header, rows, drawn, right=(1,)),
+    ]
 
 
 def _table(header: list[str], rows: list[list[str]], drawn: bool, *, right: tuple[int, ...] = ()) -> Any:
@@ -173,7 +186,7 @@ def _ratio(assessment: Assessment, drawn: bool) -> list[Any]:
             )
         )
     return [
-        heading("How much does activity here tell?"),
+        heading(f"How much does {_what(assessment)} here tell?"),
         _table(header, rows, drawn),
         hanging([("reading", line), *tests]),
     ]
@@ -186,7 +199,7 @@ def _on_log_axis(value: float) -> float:
 
 def _posteriors(assessment: Assessment, drawn: bool) -> list[Any]:
     """Return the posteriors and the priors one must have held."""
-    counts = assessment.counts
+    counts, given = assessment.counts, "no" if assessment.claim.absent else "the"
     asked, prevalent = assessment.posterior, assessment.posterior_at_prevalence
     rows = []
     if asked.prior != prevalent.prior:
@@ -199,8 +212,8 @@ def _posteriors(assessment: Assessment, drawn: bool) -> list[Any]:
         lines.append(
             (
                 "observed",
-                f"of the studies active here, {count(counts.term_active)} of {count(counts.active_total)} = "
-                f"{probability(prevalent.observed)} carry the term",
+                f"of the studies {active_words(assessment.claim.absent)}, {count(counts.term_active)} of "
+                f"{count(counts.active_total)} = {probability(prevalent.observed)} carry the term",
             )
         )
     lines += [
@@ -212,7 +225,7 @@ def _posteriors(assessment: Assessment, drawn: bool) -> list[Any]:
         for item in assessment.required_prior
     ]
     return [
-        heading(f"How probable is {assessment.claim.term!r}, given the activity?"),
+        heading(f"How probable is {assessment.claim.term!r}, given {given} activity?"),
         _table(header, rows, drawn),
         hanging([*lines, ("in words", assessment.wording)]),
     ]

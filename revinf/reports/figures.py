@@ -12,7 +12,7 @@ from typing import Any
 
 from revinf.exceptions import InputFileError
 
-__all__ = ["ACCENT", "INK", "MUTED", "new_figure", "write_figure"]
+__all__ = ["ACCENT", "INK", "MUTED", "new_figure", "ratio_axis", "write_figure"]
 
 INK, MUTED, ACCENT = "#222222", "#8a8a8a", "#0072b2"
 FORMATS = (".png", ".svg", ".pdf")
@@ -43,6 +43,24 @@ def new_figure(width: float, height: float, rows: int = 1, columns: int = 1, **g
         axis.spines[["top", "right"]].set_visible(False)
         axis.tick_params(labelsize=9, colors=INK)
     return figure, axes
+
+
+def ratio_axis(axis: Any) -> None:
+    """Make the x axis one of ratios: logarithmic, with a line at 1 and plain numbers that leave room.
+
+    Parameters
+    ----------
+    axis : matplotlib.axes.Axes
+        Everything is drawn and the limits are final.
+    """
+    from matplotlib.ticker import LogLocator, NullFormatter
+
+    axis.axvline(1, color=INK, lw=1)
+    axis.set_xscale("log")
+    low, high = axis.get_xlim()
+    axis.xaxis.set_major_locator(LogLocator(subs=(1.0, 2.0, 5.0) if high < 200 * low else (1.0,)))
+    axis.xaxis.set_major_formatter(lambda x, _: f"{x:g}")
+    axis.xaxis.set_minor_formatter(NullFormatter())
 
 
 def write_figure(figure: Any, path: str | Path, *, title: str) -> Path:
@@ -82,8 +100,9 @@ def write_figure(figure: Any, path: str | Path, *, title: str) -> Path:
             figure.savefig(beside, metadata=metadata)
         beside.replace(path)
     except OSError as error:
-        beside.unlink(missing_ok=True)
         raise InputFileError(
             f"cannot be written ({error.strerror or error}); choose another place", path=path
         ) from None
+    finally:  # also where somebody interrupts
+        beside.unlink(missing_ok=True)
     return path

@@ -102,9 +102,7 @@ def import_screen(report: dict[str, Any]) -> list[Any]:
     if report["notices"]:
         parts += [
             heading("Noticed"),
-            hanging(
-                [(item["code"], item["message"] + first_lines(item["first_lines"])) for item in report["notices"]]
-            ),
+            hanging([(item["code"], item["message"] + first_lines(item["first_lines"])) for item in report["notices"]]),
         ]
     return parts
 

@@ -5,8 +5,8 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.figures import ACCENT, INK, MUTED, new_figure, write_figure
-from revinf.reports.numbers import coordinates, count
+from revinf.reports.figures import ACCENT, INK, MUTED, new_figure, ratio_axis, write_figure
+from revinf.reports.numbers import coordinates, count, percent
 
 if TYPE_CHECKING:
     from revinf.evidence.profile import ProcessRow, Profile
@@ -45,12 +45,10 @@ def write_profile_figure(profile: Profile, path: str | Path) -> Path:
         _draw_ratio(ratios, height, row)
     labels = [f"{row.term}  {count(row.counts.term_active)}/{count(row.counts.term_total)}" for row in rows]
     rates.set_yticks(range(len(rows)), labels, fontsize=8.5)
-    rates.set_xlabel(f"P(active here | process), {profile.level:.0%} interval\n● rate   | shrunk rate", fontsize=9)
+    rates.set_xlabel(f"P(active here | process), {percent(profile.level)} interval\n● rate   | shrunk rate", fontsize=9)
     rates.set_xlim(0, max([0.05, *(row.rate.high for row in rows)]) * 1.05)
     ratios.set_yticks(range(len(rows)), [])
-    ratios.axvline(1, color=INK, lw=1)
-    ratios.set_xscale("log")
-    ratios.xaxis.set_major_formatter(lambda x, _: f"{x:g}")
+    ratio_axis(ratios)
     ratios.set_xlabel("likelihood ratio\n● decided   ○ includes 1", fontsize=9)
     for axis in (rates, ratios):
         axis.set_ylim(len(rows) - 0.4, -0.6)
@@ -59,8 +57,7 @@ def write_profile_figure(profile: Profile, path: str | Path) -> Path:
     where = f"{points} mm MNI152, within {profile.radius_mm:g} mm" if points else profile.place.words
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"{where}: {count(profile.hits)} of {count(facts.n_studies)} {facts.study_is} active\n"
-        f"{facts.name}{invented}",
+        f"{where}: {count(profile.hits)} of {count(facts.n_studies)} {facts.study_is} active\n{facts.name}{invented}",
         fontsize=10,
         x=0.01,
         ha="left",

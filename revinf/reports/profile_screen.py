@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.numbers import coordinates, count, interval, p_value, probability, ratio
-from revinf.reports.terminal import hanging, heading, plain_table
+from revinf.reports.numbers import coordinates, count, interval, p_value, percent, probability, ratio
+from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import LIMITS, NO_INDIVIDUALS
 
 if TYPE_CHECKING:
@@ -57,17 +57,16 @@ def profile_screen(profile: Profile, *, width: int = 104) -> list[Any]:
         )
     if not profile.rank_informative:
         opening.append(("Order", "the processes cannot be told apart here; the order says nothing"))
-    parts: list[Any] = [hanging(opening), heading("Processes"), _processes(profile, width >= _NARROW)]
+    parts: list[Any] = [hanging(opening), heading("Processes"), _processes(profile, width)]
     if len(profile.rows) > _ROWS:
         parts.append(hanging([("", f"{len(profile.rows) - _ROWS} more with --json")]))
     if profile.domains:
         rows = [
-            [row.domain, f"{count(row.active)} of {count(row.total)}", interval(row.rate)]
-            for row in profile.domains
+            [row.domain, f"{count(row.active)} of {count(row.total)}", interval(row.rate)] for row in profile.domains
         ]
         parts += [
             heading("Domains"),
-            plain_table(["domain", "active here", f"rate ({profile.level:.0%} interval)"], rows, right=(1,)),
+            plain_table(["domain", "active here", f"rate ({percent(profile.level)} interval)"], rows, right=(1,)),
         ]
     return [*parts, Text("\n" + " ".join(LIMITS[:2]) + "\n" + NO_INDIVIDUALS, style="dim")]
 
@@ -84,8 +83,9 @@ def _where(profile: Profile) -> str:
     return f"{points}, within {profile.radius_mm:g} mm: {profile.place.words}{answered}"
 
 
-def _processes(profile: Profile, wide: bool) -> Any:
+def _processes(profile: Profile, width: int) -> Any:
     """Return the processes, highest shrunk rate first."""
+    wide = width >= _NARROW
     rows = []
     for row in profile.rows[:_ROWS]:
         rows.append(
@@ -99,4 +99,6 @@ def _processes(profile: Profile, wide: bool) -> Any:
             ]
         )
     header = ["process", "active here", "rate (interval)" if wide else "rate", "shrunk", "likelihood ratio", "q"]
-    return plain_table(header, rows, right=(1, 3, 5))
+    header, rows = fitting(header, rows, width, (5, 3, 2))
+    right = tuple(at for at, name in enumerate(header) if name in ("active here", "shrunk", "q"))
+    return plain_table(header, rows, right=right)

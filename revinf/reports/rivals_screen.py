@@ -5,7 +5,8 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 from revinf.reports.numbers import coordinates, count, interval, probability, ratio
-from revinf.reports.terminal import hanging, heading, plain_table
+from revinf.reports.terminal import fitting, hanging, heading, plain_table
+from revinf.reports.wording import active_words
 
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
@@ -18,23 +19,30 @@ _ROWS = 6
 """Rivals on the screen; the rest stand in the JSON."""
 
 
-def rivals_screen(assessment: Assessment) -> list[Any]:
+def rivals_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
     """Return what else the activity could mean, and over which choices the answer holds.
 
     Parameters
     ----------
     assessment : Assessment
         From `revinf.assess`.
+    width : int, columns, default 104
+        Of the terminal; a narrow one leaves the columns that do not fit to the JSON.
 
     Returns
     -------
     list
         Renderables.
     """
-    return [*_rivals(assessment), *_breadth(assessment), *_contrasts(assessment), *_robustness(assessment)]
+    return [
+        *_rivals(assessment, width),
+        *_breadth(assessment),
+        *_contrasts(assessment),
+        *_robustness(assessment, width),
+    ]
 
 
-def _rivals(assessment: Assessment) -> list[Any]:
+def _rivals(assessment: Assessment, width: int) -> list[Any]:
     """Return the processes that lead here, with the claimed one among them."""
     chosen, counts = assessment.selectivity, assessment.counts
     rows = [_rival_row(rival) for rival in chosen.rivals[:_ROWS]]
@@ -52,10 +60,12 @@ def _rivals(assessment: Assessment) -> list[Any]:
         notes.append(("", f"{len(chosen.rivals) - _ROWS} more with --json"))
     if chosen.kin:
         notes.append(("kin", ", ".join(rival.term for rival in chosen.kin) + " (largely the same studies)"))
-    header = ["process", "active here", "shrunk rate", "likelihood ratio", "claim leads it"]
+    header = ["process", active_words(assessment.claim.absent), "shrunk rate", "likelihood ratio", "P(claim leads)"]
+    duels = any(rival.probability_ahead is not None for rival in chosen.rivals)
+    header, rows = fitting(header, rows, width, (2, 3) if duels else (4, 2))
     return [
         heading("What else could it mean?"),
-        plain_table(header, rows, right=(1, 2)),
+        plain_table(header, rows, right=tuple(at for at in (1, 2) if header[at:] and "ratio" not in header[at])),
         hanging(notes),
     ]
 
@@ -74,7 +84,7 @@ def _rival_row(rival: Rival) -> list[str]:
         f"{count(rival.counts.term_active)} of {count(rival.counts.term_total)}",
         probability(rival.shrunk_rate),
         "" if rival.likelihood_ratio is None else interval(rival.likelihood_ratio, ratio),
-        "" if rival.probability_ahead is None else f"P = {probability(rival.probability_ahead)}",
+        "" if rival.probability_ahead is None else probability(rival.probability_ahead),
     ]
 
 
@@ -93,9 +103,12 @@ def _rank_words(assessment: Assessment) -> str:
 def _breadth(assessment: Assessment) -> list[Any]:
     """Return how busy and how many-sided the place is."""
     breadth, total = assessment.breadth, assessment.counts
-    words = f"{count(total.active_total)} of {count(total.total)} studies are active here"
+    absent = assessment.claim.absent
+    words = f"{count(total.active_total)} of {count(total.total)} studies are {active_words(absent)}"
     if breadth.activation_percentile is not None:
         words += f", more than at {breadth.activation_percentile:.0f} % of the places compared"
+    if absent:  # how many processes share a silence says nothing about the place
+        return [hanging([("silent", words)])]
     rows = [("busy", words)]
     mixed = []
     if breadth.effective_processes is not None:
@@ -142,8 +155,7 @@ def _contrasts(assessment: Assessment) -> list[Any]:
         rows += [
             (
                 "alone",
-                f"{'no ratio' if place.ratio is None else interval(place.ratio, ratio)} at "
-                f"{coordinates(place.peak)}",
+                f"{'no ratio' if place.ratio is None else interval(place.ratio, ratio)} at {coordinates(place.peak)}",
             )
             for place in pattern.regions
         ]
@@ -152,16 +164,14 @@ def _contrasts(assessment: Assessment) -> list[Any]:
     return [heading("Counted otherwise"), hanging(rows)] if rows else []
 
 
-def _robustness(assessment: Assessment) -> list[Any]:
+def _robustness(assessment: Assessment, width: int) -> list[Any]:
     """Return over which choices direction and grade hold."""
     robust = assessment.robustness
     rows = []
     for choice, holds in robust.holds().items():
         members = robust.of(choice)
         kept = sum(row.holds for row in members)
-        rows.append(
-            [choice, "holds" if holds else f"at {kept} of {len(members)}", _settings(members), _range(members)]
-        )
+        rows.append([choice, "holds" if holds else f"at {kept} of {len(members)}", _settings(members), _range(members)])
     influence = robust.left_out
     if influence is not None and influence.ratio is not None:
         verdict = "changes" if robust.direction_changes_without_one else "holds"
@@ -173,7 +183,9 @@ def _robustness(assessment: Assessment) -> list[Any]:
                 interval(influence.ratio, ratio),
             ]
         )
-    header = ["choice", "direction and grade", "settings", "likelihood ratio"]
+    header, rows = fitting(["choice", "direction and grade", "settings", "likelihood ratio"], rows, width, (2,))
+    if len(header) < 4:
+        header[1] = "answer"
     return [heading("Does the answer hold?"), plain_table(header, rows)]
 
 

@@ -5,8 +5,8 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.figures import ACCENT, INK, MUTED, new_figure, write_figure
-from revinf.reports.numbers import coordinates, count, interval, ratio
+from revinf.reports.figures import ACCENT, MUTED, new_figure, ratio_axis, write_figure
+from revinf.reports.numbers import coordinates, count, interval, percent, ratio
 
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
@@ -40,7 +40,6 @@ def write_robustness_figure(assessment: Assessment, path: str | Path) -> Path:
     figure, axis = new_figure(8.0, 1.9 + 0.24 * len(rows))
     base = assessment.likelihood_ratio.value
     axis.axvspan(base.low, base.high, color=ACCENT, alpha=0.10, lw=0)
-    axis.axvline(1, color=INK, lw=1)
     labels, heights = [], []
     height = 0.0
     group = None
@@ -52,23 +51,25 @@ def write_robustness_figure(assessment: Assessment, path: str | Path) -> Path:
         heights.append(height)
         _draw_row(axis, height, value, holds)
         height += 1
-    axis.set_xscale("log")
     axis.set_yticks(heights, labels, fontsize=8.5)
     axis.set_ylim(max(heights) + 0.8, -0.8)
     low = min(0.2, *(value.low for _, _, value, _ in rows)) * 0.8
     high = max(5.0, *(value.high for _, _, value, _ in rows)) * 1.25
     axis.set_xlim(max(low, 1e-3), min(high, 1e4))
-    axis.xaxis.set_major_formatter(lambda x, _: f"{x:g}")
+    ratio_axis(axis)
     axis.set_xlabel(
-        f"likelihood ratio ({assessment.level:.0%} interval); left of 1 speaks against, right of 1 for\n"
+        f"likelihood ratio ({percent(assessment.level)} interval); left of 1 speaks against, right of 1 for\n"
         "● direction and grade as asked   ○ changed   band: interval as asked",
         fontsize=9,
     )
     claim, facts = assessment.claim, assessment.literature
-    points = " and ".join(coordinates(peak) for peak in claim.peaks) or assessment.place.words
+    where = " and ".join(coordinates(peak) for peak in claim.peaks)
+    where = f"{where} mm {claim.space}" if where else assessment.place.words
+    if claim.absent:
+        where = f"no activity at {where}"
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"Does the answer hold?  {claim.term}, {points} mm {claim.space}\n"
+        f"Does the answer hold?  {claim.term}, {where}\n"
         f"{facts.name}: {count(facts.n_studies)} {facts.study_is}; as asked {interval(base, ratio)}{invented}",
         fontsize=10,
         x=0.01,
@@ -82,9 +83,7 @@ def _rows(assessment: Assessment) -> list[tuple[str, str, Any, bool]]:
     rows: list[tuple[str, str, Any, bool]] = [("as asked", "", assessment.likelihood_ratio.value, True)]
     for name in _GROUPS:
         rows += [
-            (name, row.setting, row.ratio, row.holds)
-            for row in assessment.robustness.of(name)
-            if row.ratio is not None
+            (name, row.setting, row.ratio, row.holds) for row in assessment.robustness.of(name) if row.ratio is not None
         ]
     left_out = assessment.robustness.left_out
     if left_out is not None and left_out.ratio is not None:

@@ -9,10 +9,15 @@ if TYPE_CHECKING:
     from rich.console import Console
     from rich.table import Table
 
-__all__ = ["hanging", "heading", "new_console", "plain_table", "screen_width", "show"]
+__all__ = ["fitting", "hanging", "heading", "new_console", "plain_table", "screen_width", "show"]
 
 _WIDEST = 104
 """Columns beyond which a line of prose is hard to read."""
+
+_NAME = 18
+"""Columns that a name needs so that it does not fall apart into syllables."""
+
+_GAP = 2
 
 
 def new_console(width: int | None = None, *, to_stderr: bool = False) -> Console:
@@ -73,3 +78,36 @@ def plain_table(header: list[str], rows: list[list[str]], *, right: tuple[int, .
     for row in rows:
         table.add_row(*(Text(cell) for cell in row))
     return table
+
+
+def fitting(
+    header: list[str], rows: list[list[str]], width: int, drop: tuple[int, ...]
+) -> tuple[list[str], list[list[str]]]:
+    """Return a table without the columns that do not fit; what is left out stands in the JSON.
+
+    Parameters
+    ----------
+    header, rows : list
+        Of a plain table whose first column holds names and may wrap.
+    width : int, columns
+        Of the screen.
+    drop : tuple of int
+        Columns that may go, the least needed first.
+
+    Returns
+    -------
+    list, list
+        Header and rows.
+
+    Examples
+    --------
+    >>> fitting(["process", "rate", "q"], [["fear", "0.5", "0.1"]], 12, (2,))
+    (['process', 'rate'], [['fear', '0.5']])
+    """
+    kept = list(range(len(header)))
+    widest = [max(len(row[at]) for row in [header, *rows]) for at in kept]
+    for column in drop:
+        if min(widest[0], _NAME) + sum(widest[at] for at in kept[1:]) + _GAP * len(kept) <= width:
+            break
+        kept.remove(column)
+    return [header[at] for at in kept], [[row[at] for at in kept] for row in rows]

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-__all__ = ["LIMITS", "NO_INDIVIDUALS", "agreement", "claim_words", "grade_line"]
+__all__ = ["LIMITS", "NO_INDIVIDUALS", "active_words", "agreement", "claim_words", "grade_line"]
 
 LIMITS = (
     "Labels may follow the activation: authors can name the process because of the place.",
@@ -29,6 +29,17 @@ def claim_words(term: str, where: str) -> str:
     "activity at (20, -4, -18) is taken as a sign of 'fear'"
     """
     return f"{where} is taken as a sign of {term!r}"
+
+
+def active_words(absent: bool) -> str:
+    """Say which studies were counted at the place: those that hit it, or, for an absence, the others.
+
+    Examples
+    --------
+    >>> active_words(False), active_words(True)
+    ('active here', 'not active here')
+    """
+    return "not active here" if absent else "active here"
 
 
 def grade_line(direction: str, headline: str | None, estimate: str) -> str:

@@ -57,9 +57,9 @@ def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np
     from nibabel.imageglobals import LoggingOutputSuppressor
 
     if not file.name.lower().endswith((".nii", ".nii.gz")):
-        raise InputFileError(f"a {what} must be a .nii or .nii.gz file; convert the image", path=file)
+        raise InputFileError(f"the {what} must be a .nii or .nii.gz file; convert the image", path=file)
     if not file.is_file():
-        raise InputFileError(f"there is no such file; give the path of a {what} image", path=file)
+        raise InputFileError(f"there is no such file; give the path of the {what} image", path=file)
     try:
         # Headers with repairable faults make nibabel warn and log; the checks here replace that.
         with warnings.catch_warnings(), LoggingOutputSuppressor():
@@ -67,7 +67,7 @@ def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np
             image = nib.load(file)
             if not isinstance(image, nib.Nifti1Image):
                 raise InputFileError("is no NIfTI volume; export a 3-D image", path=file)
-            affine = _checked_header(image, file)
+            affine = _checked_header(image, file, what)
             if file.name.lower().endswith(".gz"):
                 _read_to_the_end(file)
             values = np.asanyarray(image.dataobj)
@@ -82,7 +82,7 @@ def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np
         ) from None
     if values.dtype.kind not in "buif":
         raise InputFileError(
-            f"voxels must be plain numbers, but are {values.dtype}; save the mask as integers",
+            f"voxels must be plain numbers, but are {values.dtype}; save the {what} as integers",
             path=file,
         )
     if not np.isfinite(values).all():
@@ -97,17 +97,17 @@ def _read_to_the_end(file: Path) -> None:
             pass
 
 
-def _checked_header(image: Any, file: Path) -> NDArray[np.float64]:
+def _checked_header(image: Any, file: Path, what: str) -> NDArray[np.float64]:
     """Return the affine of an image after checking grid and orientation, before any voxel is read."""
     shape = tuple(int(length) for length in image.shape)
     if len(shape) not in (3, 4) or (len(shape) == 4 and shape[3] != 1):
         raise InputFileError(
-            f"a mask must be one 3-D volume, but the image has shape {shape}; extract one volume",
+            f"the {what} must be one 3-D volume, but the image has shape {shape}; extract one volume",
             path=file,
         )
     if not all(0 < length <= _LONGEST_AXIS for length in shape):
         raise InputFileError(
-            f"a mask may have 1 to {_LONGEST_AXIS} voxels an axis, but the image has shape {shape}; resample it",
+            f"a {what} may have 1 to {_LONGEST_AXIS} voxels an axis, but this image has shape {shape}; resample",
             path=file,
         )
     if int(image.header["qform_code"]) == 0 and int(image.header["sform_code"]) == 0:

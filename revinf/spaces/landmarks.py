@@ -80,9 +80,7 @@ def nearest_label(reference: BrainReference, xyz_mm: ArrayLike, within_mm: float
     )
 
 
-def nearest_network(
-    reference: BrainReference, xyz_mm: ArrayLike, within_mm: float = 6.0
-) -> tuple[str, float] | None:
+def nearest_network(reference: BrainReference, xyz_mm: ArrayLike, within_mm: float = 6.0) -> tuple[str, float] | None:
     """Return the network of the nearest point of the 300-point set, and how far that point is.
 
     Parameters

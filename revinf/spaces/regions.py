@@ -174,7 +174,7 @@ def load_mask(path: str | PathLike[str]) -> Mask:
     --------
     >>> load_mask("absent.nii.gz")
     Traceback (most recent call last):
-    revinf.exceptions.InputFileError: absent.nii.gz: there is no such file; give the path of a mask image
+    revinf.exceptions.InputFileError: absent.nii.gz: there is no such file; give the path of the mask image
     """
     file = Path(path)
     values, affine = read_image(file)

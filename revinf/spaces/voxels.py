@@ -46,8 +46,7 @@ def checked_affine(affine: ArrayLike) -> NDArray[np.float64]:
     matrix = np.asarray(affine, dtype=np.float64)
     if matrix.shape != (4, 4) or not np.isfinite(matrix).all():
         raise SpaceError(
-            f"affine must be 4 by 4 finite numbers, but got shape {matrix.shape}; "
-            "take it from the header of the image"
+            f"affine must be 4 by 4 finite numbers, but got shape {matrix.shape}; take it from the header of the image"
         )
     edges = float(np.prod(voxel_sizes(matrix)))
     volume = abs(float(np.linalg.det(matrix[:3, :3])))

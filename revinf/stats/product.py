@@ -81,9 +81,7 @@ def naive_bayes_posterior(tables: Sequence[Counts], prior: float, hit: Sequence[
             "whether it is active"
         )
     turned = [
-        table
-        if active
-        else Counts(table.term_inactive, table.term_active, table.other_inactive, table.other_active)
+        table if active else Counts(table.term_inactive, table.term_active, table.other_inactive, table.other_active)
         for table, active in zip(tables, seen, strict=True)
     ]
     above, below = _fraction(turned)

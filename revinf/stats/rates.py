@@ -159,9 +159,7 @@ def count_arrays(active: ArrayLike, total: ArrayLike) -> tuple[NDArray[np.int64]
     return k, n
 
 
-def beta_quantiles(
-    a: NDArray[np.float64], b: NDArray[np.float64], levels: NDArray[np.float64]
-) -> NDArray[np.float64]:
+def beta_quantiles(a: NDArray[np.float64], b: NDArray[np.float64], levels: NDArray[np.float64]) -> NDArray[np.float64]:
     """Return quantiles of Beta(a, b) distributions.
 
     Parameters

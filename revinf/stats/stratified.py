@@ -19,9 +19,7 @@ from revinf.stats.estimates import Counts, Estimate, check_level
 __all__ = ["mantel_haenszel_ratio", "quintile_strata"]
 
 
-def mantel_haenszel_ratio(
-    strata: Sequence[Counts], *, level: float = 0.95, minimum_strata: int = 2
-) -> Estimate | None:
+def mantel_haenszel_ratio(strata: Sequence[Counts], *, level: float = 0.95, minimum_strata: int = 2) -> Estimate | None:
     """Return the Mantel-Haenszel ratio of the two rates with its large-sample interval.
 
     Parameters

@@ -88,9 +88,7 @@ def test_listed_places_in_talairach_space_are_transformed(listed, transform):
         ("b,1,2,3,voxels,", "space", "space must be MNI152 or Talairach"),
     ],
 )
-def test_a_listed_cell_that_cannot_be_used_is_refused_with_path_line_and_column(
-    listed, tmp_path, row, column, problem
-):
+def test_a_listed_cell_that_cannot_be_used_is_refused_with_path_line_and_column(listed, tmp_path, row, column, problem):
     with pytest.raises(InputFileError) as caught:
         listed(f"region,x,y,z,space,radius_mm\ngood,1,2,3,MNI,\n\n{row}\n")
     assert str(caught.value).startswith(f"{tmp_path / 'places.csv'}:4:{column}: ")
@@ -117,7 +115,7 @@ def test_places_come_from_exactly_one_source(invented_literature, tmp_path):
         invented_literature, 50.0, 5.0
     )
     for spacing, path in ((None, None), (50.0, tmp_path / "places.csv")):
-        with pytest.raises(InvalidClaimError, match="give either --lattice MM or --regions FILE"):
+        with pytest.raises(InvalidClaimError, match="give --lattice MM, --regions FILE, or --atlas FILE"):
             chosen_places(invented_literature, PlaceRequest(radius_mm=5.0, spacing_mm=spacing, listed=path))
 
 

@@ -74,3 +74,22 @@ def demo(tmp_path_factory: pytest.TempPathFactory, revinf: Callable[..., Any]) -
 def literature(demo: Path) -> Path:
     """Give the folder of the built invented literature; do not write to it."""
     return demo / "literature"
+
+
+@pytest.fixture
+def refused(revinf: Callable[..., Any], tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Callable[..., str]:
+    """Run a command in an empty folder that must end with 2, one line on stderr and no file; give the line."""
+    here = tmp_path / "empty folder"
+    here.mkdir()
+    monkeypatch.chdir(here)
+
+    def run(*args: object) -> str:
+        done = revinf(*args)
+        assert (done.exit_code, done.stdout) == (2, "")
+        assert done.stderr.startswith("revinf: ")
+        assert done.stderr.endswith("\n")
+        assert len(done.stderr.splitlines()) == 1
+        assert list(here.iterdir()) == []
+        return str(done.stderr)
+
+    return run

@@ -56,10 +56,10 @@ CASES = {
     "peak of four numbers": ("{check} --peak 1 2 3 4 --term fear", "unexpected extra argument"),
     "peak that is no number": ("{check} --peak nan 2 3 --term fear", "but got nan"),
     "peak in nanometres": ("{check} --peak 1e9 2 3 --term fear", "within 1000 mm of the origin"),
-    "two peaks": ("{fear} --peak 4 5 6", "(2 peaks) cannot be assessed yet"),
-    "no place": ("{check} --term fear", "exactly one place, but got 0"),
-    "peak and mask": ("{fear} --mask {text}", "exactly one place, but got 2"),
-    "peak and region": ("{fear} --region here", "exactly one place, but got 2"),
+    "same peak twice": ("{fear} --peak -22 -4 -18", "a peak of the pattern stands twice"),
+    "no place": ("{check} --term fear", "exactly one kind of place, but got 0"),
+    "peak and mask": ("{fear} --mask {text}", "exactly one kind of place, but got 2"),
+    "peak and region": ("{fear} --region here", "exactly one kind of place, but got 2"),
     "missing literature": ("check --literature {absent} {here}", "there is no such literature folder"),
     "folder that is no literature": ("check --literature {occupied} {here}", "is not a literature"),
     "file for a literature": ("check --literature {peaks} {here}", "there is no such literature folder"),
@@ -94,7 +94,7 @@ CASES = {
         "check --peak 0 0 120 --term navigation", "farther than its radius of 10 mm",
     ),
     "mask with a table": ("check --mask {text} --term navigation", "no peaks to put into a mask"),
-    "missing mask": ("{check} --mask {absent}.nii --term fear", "no such file; give the path of a mask"),
+    "missing mask": ("{check} --mask {absent}.nii --term fear", "no such file; give the path of the mask image"),
     "text for a mask": ("{check} --mask {text} --term fear", "cannot be read as a NIfTI image"),
     "table for a mask": ("{check} --mask {peaks} --term fear", "must be a .nii or .nii.gz file"),
     "empty mask": ("{check} --mask {empty} --term fear", "the mask is empty"),
@@ -109,8 +109,8 @@ CASES = {
     "inspect a missing folder": ("inspect {absent}", "there is no such literature folder"),
     "terms of a missing table": ("terms --table {absent}", "there is no such file"),
     "terms of two sources": ("terms --table {table} --literature {lit}", "not both"),
-    "tabulate nowhere": ("{tabulate}", "give either --lattice MM or --regions FILE"),
-    "tabulate twice": ("{tabulate} --lattice 40 --regions {places}", "give either --lattice MM or --regions"),
+    "tabulate nowhere": ("{tabulate}", "give --lattice MM, --regions FILE, or --atlas FILE with"),
+    "tabulate twice": ("{tabulate} --lattice 40 --regions {places}", "places come from one source"),
     "tabulate a lattice of 0": ("{tabulate} --lattice 0", "spacing_mm must be 1 to 50 mm"),
     "tabulate a bad place": ("{tabulate} --regions {places}", "places.csv:2:z: 'three' is not a number"),
     "tabulate an unknown term": ("{tabulate} --lattice 40 --term feer", "did you mean 'fear'"),
@@ -245,9 +245,7 @@ def test_interrupted_build_leaves_the_old_literature_and_no_litter(revinf, demo,
             raise KeyboardInterrupt
 
     monkeypatch.setattr(store.np, "save", interrupt)
-    done = revinf(
-        "build", "--peaks", demo / "peaks.csv", "--annotations", demo / "annotations.csv", "--out", damaged
-    )
+    done = revinf("build", "--peaks", demo / "peaks.csv", "--annotations", demo / "annotations.csv", "--out", damaged)
     assert_one_line(done, "interrupted", code=130)
     assert len(saved) == 3
     assert {path.name: path.read_bytes() for path in damaged.iterdir()} == before

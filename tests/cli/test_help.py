@@ -25,7 +25,7 @@ def example_of(name):
 
 
 def test_commands_are_those_of_the_design():
-    assert {"check", "build", "inspect", "terms", "tabulate", "demo"} <= set(COMMANDS)
+    assert {"check", "profile", "build", "inspect", "terms", "tabulate", "demo"} <= set(COMMANDS)
 
 
 @each_command
@@ -71,7 +71,7 @@ def test_example_parses(name):
     assert context.info_name == name
 
 
-@pytest.mark.parametrize("name", ["check", "terms", "demo"])
+@pytest.mark.parametrize("name", ["check", "profile", "terms", "demo"])
 def test_example_that_needs_no_files_runs(name, revinf, tmp_path, monkeypatch):
     monkeypatch.chdir(tmp_path)
     done = revinf(name, *example_of(name))

@@ -34,9 +34,7 @@ def test_what_the_demo_says_to_run_runs(revinf, tmp_path, monkeypatch):
     import shlex
 
     said = " ".join(revinf("demo", "--out", tmp_path / "demo").stdout.split())
-    commands = re.findall(
-        r"revinf (?:build|check) .*?(?= revinf | a [a-z ]+ revinf| outside the head| README)", said
-    )
+    commands = re.findall(r"revinf (?:build|check) .*?(?= revinf | a [a-z ]+ revinf| outside the head| README)", said)
     assert len(commands) == 5
     monkeypatch.chdir(tmp_path / "demo")
     for command in commands:

@@ -22,6 +22,7 @@ except SystemExit as stop:
     code = stop.code or 0
 print(json.dumps([code, sorted({name.partition(".")[0] for name in sys.modules})]), file=sys.stderr)
 """
+HEAVY = {"scipy", "pandas", "nilearn", "nibabel", "matplotlib", "sklearn", "joblib"}
 TOM = ("--peak", "48", "-54", "24", "--term", "theory of mind")
 FEAR = ("--peak", "-22", "-4", "-18", "--term", "fear")
 
@@ -44,21 +45,51 @@ def probe(*args, cwd):
     return code, set(modules)
 
 
-@pytest.mark.parametrize("more", [(), ("--json",)])
+@pytest.mark.parametrize(
+    "more",
+    [
+        (),
+        ("--json",),
+        ("--context", "sadness", "--rival", "pain", "--exclude", "taste", "--all", "--json"),
+        ("--absent",),
+        ("--peak", "36", "22", "-2"),
+    ],
+    ids=["screen", "json", "choices", "absent", "pattern"],
+)
 def test_check_on_a_built_literature_imports_no_heavy_library(literature, tmp_path, more):
     code, modules = probe("check", "--literature", literature, *FEAR, *more, cwd=tmp_path)
     assert code == 0
     assert "numpy" in modules
-    assert not modules & {"scipy", "pandas", "nilearn", "nibabel", "matplotlib", "sklearn", "joblib"}
+    assert not modules & HEAVY
+
+
+@pytest.mark.parametrize("more", [("--json",), ()])
+def test_profile_of_a_built_literature_imports_no_heavy_library(literature, tmp_path, more):
+    code, modules = probe("profile", "--literature", literature, *FEAR[:4], *more, cwd=tmp_path)
+    assert code == 0
+    assert not modules & HEAVY
+
+
+def test_figure_imports_the_plotting_library_and_no_other_heavy_one(literature, tmp_path):
+    code, modules = probe("check", "--literature", literature, *FEAR, "--json", "--figure", "out.svg", cwd=tmp_path)
+    assert code == 0
+    assert modules & HEAVY == {"matplotlib"}
+
+
+def test_terms_of_a_built_literature_imports_no_heavy_library(literature, tmp_path):
+    code, modules = probe("terms", "--literature", literature, cwd=tmp_path)
+    assert code == 0
+    assert not modules & HEAVY
 
 
 @pytest.mark.parametrize(
-    "args", [("--help",), ("--version",), ("terms",), ("terms", "memory"), ("check", "--help")]
+    "args",
+    [("--help",), ("--version",), ("terms",), ("terms", "memory"), ("check", "--help"), ("profile", "--help")],
 )
 def test_help_version_and_terms_import_no_heavy_library(tmp_path, args):
     code, modules = probe(*args, cwd=tmp_path)
     assert code == 0
-    assert not modules & {"scipy", "pandas", "nilearn", "nibabel", "matplotlib", "sklearn", "joblib"}
+    assert not modules & HEAVY
 
 
 def test_check_puts_its_result_on_stdout_and_exits_0(fresh, literature, tmp_path):
@@ -72,8 +103,7 @@ def test_bad_input_puts_one_line_on_stderr_and_exits_2(fresh, literature, tmp_pa
     done = fresh("check", "--literature", literature, "--peak", "1", "2", "3", "--term", "feer", cwd=tmp_path)
     assert (done.returncode, done.stdout) == (2, "")
     assert (
-        done.stderr
-        == "revinf: no study in the literature 'literature' carries the term 'feer'; did you mean 'fear'?\n"
+        done.stderr == "revinf: no study in the literature 'literature' carries the term 'feer'; did you mean 'fear'?\n"
     )
 
 

@@ -14,6 +14,8 @@ from revinf.literature.building import build_literature
 from revinf.literature.import_options import ImportOptions
 from revinf.literature.literature import Literature
 from revinf.literature.manifest import Description
+from tests.evidence.worlds import mixed_groups, mixed_studies
+from tests.literature.in_memory import in_memory
 
 GREY = (-42.0, -22.0, 52.0)
 """Precentral cortex: grey matter in the template (common practice, no source)."""
@@ -44,3 +46,9 @@ def grouped_literature(invented_files: ImportOptions, tmp_path_factory: pytest.T
     options = replace(invented_files, studies=papers, group="paper")
     description = Description(name="grouped", study_is="papers", invented=True)
     return build_literature(options, folder / "literature", description)[0]
+
+
+@pytest.fixture(scope="session")
+def mixed() -> Literature:
+    """Give the mixed invented literature, every study of which `mixed_studies` lists."""
+    return in_memory(mixed_studies(), groups=mixed_groups(), brain=True)

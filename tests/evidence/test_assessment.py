@@ -21,7 +21,7 @@ SCHEMA = {
     "version": 0,
     "claim": {
         "id": 0, "term": 0, "region_kind": 0, "peaks": 0, "space": 0, "radius_mm": 0, "prior": 0,
-        "context": 0, "quote": 0, "location": 0,
+        "absent": 0, "context": 0, "quote": 0, "location": 0,
     },
     "place": {
         "hemisphere": 0,
@@ -41,20 +41,21 @@ SCHEMA = {
     "association": {"fisher_p": 0, "q": 0},
     "selectivity": {
         "rank": 0, "n_process_terms": 0, "rank_informative": 0, "n_rivals_ahead": 0, "best_rival": 0,
-        "probability_ahead": 0,
+        "probability_ahead": 0, "shrunk_rate": 0,
     },
     "breadth": {
         "activation_percentile": 0, "functional_diversity": E, "category_diversity": E,
-        "effective_domains": E, "n_domains": 0, "effective_processes": E, "n_processes": 0,
+        "category_diversity_minimum": 0, "effective_domains": E, "n_domains": 0, "effective_processes": E,
+        "n_processes": 0, "n_processes_above_own_rate": 0,
     },
     "reporting_volume": {"crude_ratio": 0, "adjusted_ratio": E},
     "context": {"n_studies": 0, "counts": COUNTS, "ratio": E},
-    "mirror": {"counts": COUNTS, "ratio": E},
+    "mirror": {"counts": COUNTS, "ratio": E, "this_side_only": 0, "other_side_only": 0},
     "pattern": {"regions": 0, "joint": E, "joint_hits": 0, "product": 0, "overstatement": 0},
     "balanced_ratio": E,
     "rivals": 0,
     "kin": 0,
-    "robustness": 0,
+    "robustness": {"holds": 0, "rows": 0, "largest_influence": 0, "direction_changes_without_one": 0},
     "cautions": 0,
     "wording": 0,
 }  # fmt: skip
@@ -126,6 +127,7 @@ def test_claim_is_given_back_as_it_was_asked(answer):
         "space": "MNI152",
         "radius_mm": 10.0,
         "prior": 0.2,
+        "absent": False,
         "context": [],
         "quote": "A quote.",
         "location": "page 3",
@@ -144,9 +146,7 @@ def test_literature_is_named_with_its_size_and_fingerprint(answer, invented_lite
     }
 
 
-@pytest.mark.parametrize(
-    "counts", [(3, 1, 0, 4), (0, 63, 0, 388), (63, 0, 388, 0), (0, 1, 0, 1), (10**6, 0, 0, 10**6)]
-)
+@pytest.mark.parametrize("counts", [(3, 1, 0, 4), (0, 63, 0, 388), (63, 0, 388, 0), (0, 1, 0, 1), (10**6, 0, 0, 10**6)])
 @pytest.mark.parametrize("prior", [1e-12, 0.5, 1 - 1e-12, "prevalence"])
 def test_json_is_strict_and_survives_the_round_trip(table_of, counts, prior):
     content = assess(Claim(term="pain", region="here", prior=prior), table_of(counts)).to_dict()

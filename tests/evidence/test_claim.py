@@ -44,7 +44,7 @@ PEAK = (-37.0, -24.0, 51.0)
     ],
 )
 def test_claim_takes_exactly_one_of_peak_mask_and_region(place, number):
-    with pytest.raises(InvalidClaimError, match=f"in exactly one place, but got {number}; give a peak, a mask"):
+    with pytest.raises(InvalidClaimError, match=f"in exactly one kind of place, but got {number}; give peaks, a mask"):
         Claim(term="fear", **place)
 
 
@@ -54,12 +54,16 @@ def test_claim_with_one_place_stands(place):
     assert [bool(claim.peaks), claim.mask is not None, claim.region is not None].count(True) == 1
 
 
-@pytest.mark.parametrize("number", [2, 3])
-def test_several_peaks_are_refused_in_one_line(number):
+def test_several_peaks_form_a_pattern_in_the_order_given():
+    claim = Claim(term="fear", peaks=[(4, 5, 6), (1, 2, 3)])
+    assert claim.peaks == claim.mni_peaks() == ((4.0, 5.0, 6.0), (1.0, 2.0, 3.0))
+
+
+@pytest.mark.parametrize("peaks", [[(1, 2, 3)] * 2, [(1, 2, 3), (4, 5, 6), (1.04, 1.96, 3)]])
+def test_peak_that_stands_twice_is_refused_in_one_line(peaks):
     with pytest.raises(InvalidClaimError) as caught:
-        Claim(term="fear", peaks=[(1, 2, 3)] * number)
-    assert f"({number} peaks) cannot be assessed yet; check one --peak at a time" in str(caught.value)
-    assert "\n" not in str(caught.value)
+        Claim(term="fear", peaks=peaks)
+    assert str(caught.value) == "a peak of the pattern stands twice; give each place once"
 
 
 @pytest.mark.parametrize("term", ["", "   ", "_ _"])

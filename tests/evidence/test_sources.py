@@ -151,8 +151,7 @@ def test_table_source_answers_as_the_table_itself(table):
 def test_literature_source_answers_as_the_literature_itself(invented_literature):
     claim = Claim(term="invented naming", peaks=[A])
     assert (
-        assess(claim, LiteratureSource(invented_literature)).to_dict()
-        == assess(claim, invented_literature).to_dict()
+        assess(claim, LiteratureSource(invented_literature)).to_dict() == assess(claim, invented_literature).to_dict()
     )
 
 

@@ -143,9 +143,7 @@ def test_offsets_that_do_not_fit_are_refused(copy, name, change):
 @pytest.mark.parametrize("value", [-1, 10_000])
 def test_indices_that_point_nowhere_are_refused(copy, name, value):
     rewrite(copy, name, lambda array: np.where(np.arange(len(array)) == 1, value, array).astype(array.dtype))
-    assert refusal(copy) == (
-        f"{copy / name}.npy: this array points outside the literature; build the literature again"
-    )
+    assert refusal(copy) == (f"{copy / name}.npy: this array points outside the literature; build the literature again")
 
 
 def test_text_that_is_not_utf_8_is_refused_when_it_is_read(copy):

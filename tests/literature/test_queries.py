@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from fractions import Fraction
-from pathlib import Path
 
 import numpy as np
 import pytest
@@ -12,56 +11,12 @@ from hypothesis import strategies as st
 
 from revinf.exceptions import SpaceError, UnknownTermError
 from revinf.literature.cells import CELL_SHAPE, candidate_slices, cell_numbers, cell_starts
-from revinf.literature.import_peaks import HEAD_MM
-from revinf.literature.importing import ImportedStudies
-from revinf.literature.literature import Literature
-from revinf.literature.manifest import Description, Manifest
-from revinf.literature.packing import pack_studies
 from revinf.spaces.regions import Mask
 from revinf.spaces.spheres import Sphere, sphere
+from tests.literature.in_memory import NEAR, PEAK, STUDIES, in_memory
 
-PEAK = st.tuples(*(st.integers(int(10 * low), int(10 * high)) for low, high in HEAD_MM))
-NEAR = st.tuples(*(st.integers(-150, 150),) * 3)  # dense enough that small spheres hit something
 CENTRE = st.one_of(PEAK, NEAR, st.tuples(*(st.integers(-10_000, 10_000),) * 3))
 RADIUS = st.one_of(st.sampled_from(["0", "10", "200"]), st.decimals(0, 200, places=2).map(str))
-
-
-def in_memory(studies: list[tuple[list, list[int]]]) -> Literature:
-    """Return an invented literature of (peaks in tenths, terms by number) a study."""
-    peaks = sorted((i, *peak) for i, (rows, _) in enumerate(studies) for peak in rows)
-    pairs = sorted({(i, term) for i, (_, terms) in enumerate(studies) for term in terms})
-    used = sorted({term for _, term in pairs})
-    table = np.array(peaks, dtype=np.int64).reshape(-1, 4)
-    imported = ImportedStudies(
-        study_ids=[f"s{i:03}" for i in range(len(studies))],
-        group_ids=[""] * len(studies),
-        dois=[""] * len(studies),
-        peak_study=table[:, 0].astype(np.int32),
-        peak_tenths=table[:, 1:].astype(np.int16),
-        terms=[f"term {term:02}" for term in used],
-        annotation_study=np.array([study for study, _ in pairs], dtype=np.int32),
-        annotation_term=np.array([used.index(term) for _, term in pairs], dtype=np.int32),
-        merged=False,
-    )
-    manifest = Manifest(
-        description=Description(name="invented", invented=True),
-        counts={},
-        merged_by=None,
-        arrays={},
-        built_with={},
-        report={},
-    )
-    return Literature(Path("in memory"), manifest, pack_studies(imported))
-
-
-STUDIES = st.lists(
-    st.tuples(
-        st.lists(st.one_of(PEAK, NEAR), max_size=6),
-        st.lists(st.integers(0, 12), min_size=1, max_size=4),
-    ),
-    min_size=1,
-    max_size=25,
-)
 
 
 def hit_by_loop(studies, is_inside) -> list[int]:
@@ -145,9 +100,7 @@ def test_studies_hitting_a_mask_are_those_of_a_plain_loop_over_closed_boxes(stud
 
     def in_a_box(peak):
         return any(
-            all(
-                abs(p - (10 * o + side * v)) <= 20 for p, o, side, v in zip(peak, origin, sides, voxel, strict=True)
-            )
+            all(abs(p - (10 * o + side * v)) <= 20 for p, o, side, v in zip(peak, origin, sides, voxel, strict=True))
             for voxel in voxels
         )
 
@@ -167,8 +120,7 @@ def test_term_hits_are_those_of_a_plain_loop(studies, data):
     literature = in_memory(studies)
     chosen = sorted(data.draw(st.sets(st.integers(0, len(studies) - 1))))
     by_loop = [
-        sum(f"term {number:02}" == term for i in chosen for number in set(studies[i][1]))
-        for term in literature.terms
+        sum(f"term {number:02}" == term for i in chosen for number in set(studies[i][1])) for term in literature.terms
     ]
     assert literature.term_hits(np.array(chosen, dtype=np.int64)).tolist() == by_loop
     everyone = np.arange(len(studies), dtype=np.int64)

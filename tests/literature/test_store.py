@@ -17,9 +17,7 @@ from revinf.literature.store import array_entries, open_arrays, replacing, write
 
 def content(folder):
     """Return the bytes of every file under a folder."""
-    return {
-        str(path.relative_to(folder)): path.read_bytes() for path in sorted(folder.rglob("*")) if path.is_file()
-    }
+    return {str(path.relative_to(folder)): path.read_bytes() for path in sorted(folder.rglob("*")) if path.is_file()}
 
 
 @pytest.fixture

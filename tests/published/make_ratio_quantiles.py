@@ -139,9 +139,7 @@ class Posterior:
     def density(self, log_ratio: mpf) -> mpf:
         """Density of ln R: the free rate integrated out."""
         edges = self._inner_edges(float(log_ratio))
-        return mp.fsum(
-            integral(lambda v: self.kernel(v, log_ratio), a, b, self.settings) for a, b in pairwise(edges)
-        )
+        return mp.fsum(integral(lambda v: self.kernel(v, log_ratio), a, b, self.settings) for a, b in pairwise(edges))
 
     def _inner_edges(self, log_ratio: float) -> list[mpf]:
         """Panels around the top of the kernel in v, placed in doubles."""

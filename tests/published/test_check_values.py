@@ -107,9 +107,7 @@ def test_theory_of_mind_at_the_right_temporo_parietal_junction_has_its_published
         ("semantic cognition", (-48, 26, 12), (54, 218, 14, 165), "for"),
     ],
 )
-def test_places_of_the_published_meta_analyses_speak_for_their_process(
-    answer, built, term, peak, counts, direction
-):
+def test_places_of_the_published_meta_analyses_speak_for_their_process(answer, built, term, peak, counts, direction):
     """Navigation and autobiographical memory: Spreng, Mar & Kim 2009; semantic cognition: Jackson 2021."""
     found = answer("check", "--literature", built[0], "--peak", *peak, "--term", term)
     assert tuple(found["counts"].values()) == counts

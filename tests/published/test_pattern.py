@@ -20,8 +20,7 @@ def simulated(seed, n_regions, n_studies=120):
 
 def tables_of(hits, term):
     return [
-        Counts(int(h[term].sum()), int((~h[term]).sum()), int(h[~term].sum()), int((~h[~term]).sum()))
-        for h in hits.T
+        Counts(int(h[term].sum()), int((~h[term]).sum()), int(h[~term].sum()), int((~h[~term]).sum())) for h in hits.T
     ]
 
 

@@ -37,8 +37,7 @@ def reference(k, n):
 
     bounds = [(-12, 12), tuple(np.log(STRENGTH_LIMITS))]
     fits = [
-        optimize.minimize(loss, [-2, y], bounds=bounds, method="L-BFGS-B", options={"ftol": 1e-15})
-        for y in (0.5, 3, 6)
+        optimize.minimize(loss, [-2, y], bounds=bounds, method="L-BFGS-B", options={"ftol": 1e-15}) for y in (0.5, 3, 6)
     ]
     best = min(fits, key=lambda fit: fit.fun)
     return 1 / (1 + np.exp(-best.x[0])), np.exp(best.x[1]), -best.fun

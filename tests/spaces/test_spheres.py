@@ -20,9 +20,7 @@ CENTRES = st.tuples(*(st.integers(-1200, 1200),) * 3)
 
 def brute_force(points, centre, radius: str):
     limit = (Fraction(radius) * 10) ** 2
-    return [
-        sum((Fraction(int(p)) - c) ** 2 for p, c in zip(point, centre, strict=True)) <= limit for point in points
-    ]
+    return [sum((Fraction(int(p)) - c) ** 2 for p, c in zip(point, centre, strict=True)) <= limit for point in points]
 
 
 @given(TENTHS, CENTRES, st.decimals(0, 200, places=2))

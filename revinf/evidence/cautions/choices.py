@@ -12,9 +12,7 @@ from revinf.stats.sides import probability_above_half
 __all__ = ["mirror_equal", "radius_sensitive", "single_study", "space_doubt"]
 
 
-def radius_sensitive(
-    ratio: Estimate, by_radius: Mapping[float, Estimate | None], limits: Thresholds
-) -> Caution | None:
+def radius_sensitive(ratio: Estimate, by_radius: Mapping[float, Estimate | None], limits: Thresholds) -> Caution | None:
     """Warn where a decided answer depends on the radius of the sphere."""
     if ratio.covers(1.0):
         return None

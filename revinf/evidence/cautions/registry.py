@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from fractions import Fraction
 from itertools import combinations
 from typing import TYPE_CHECKING
 
@@ -30,6 +31,7 @@ from revinf.evidence.cautions.source import (
 from revinf.evidence.cautions.term import not_a_process
 from revinf.evidence.cautions.thresholds import Thresholds
 from revinf.evidence.vocabulary import Vocabulary
+from revinf.spaces.coordinates import to_tenths
 
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
@@ -109,7 +111,7 @@ def _of_place(assessment: Assessment, limits: Thresholds) -> Iterator[Caution | 
 def _of_evidence(assessment: Assessment, words: Vocabulary, limits: Thresholds) -> Iterator[Caution | None]:
     """Judge how much evidence there is, and of what."""
     ratio, term = assessment.likelihood_ratio.value, assessment.claim.term
-    yield thin_evidence(assessment.counts, ratio, limits)
+    yield thin_evidence(assessment.counts, ratio, limits, absent=assessment.claim.absent)
     yield prior_driven(ratio, assessment.posterior.prior, limits)
     yield not_a_process(term, words.what(term))
 
@@ -117,7 +119,7 @@ def _of_evidence(assessment: Assessment, words: Vocabulary, limits: Thresholds) 
 def _of_rivals(assessment: Assessment, limits: Thresholds) -> Iterator[Caution | None]:
     """Judge what else the activity could mean."""
     term, chosen, breadth = assessment.claim.term, assessment.selectivity, assessment.breadth
-    yield rival_ahead(term, chosen.best_rival, chosen.probability_ahead, limits)
+    yield rival_ahead(term, chosen.best_rival, chosen.probability_ahead, limits, absent=assessment.claim.absent)
     yield rivals_tied(term, chosen.best_rival, chosen.probability_ahead, limits)
     yield broad_region(
         breadth.activation_percentile,
@@ -164,10 +166,11 @@ def _of_counting(assessment: Assessment, claim: Claim, limits: Thresholds) -> It
         yield context_small(context.n_studies, context.counts, limits)
     if pattern is not None:
         yield pattern_overstated(pattern.joint, pattern.product, pattern.joint_hits, limits)
-        spheres = combinations(claim.mni_peaks(), 2)
-        reach = (2 * claim.radius_mm) ** 2
+        # In whole tenths: spheres that only touch do not share ground, whatever their decimals.
+        centres = combinations(to_tenths(claim.mni_peaks()).tolist(), 2)
+        reach = (20 * Fraction(str(claim.radius_mm))) ** 2
         yield overlapping_regions(
-            sum(sum((a - b) ** 2 for a, b in zip(*pair, strict=True)) < reach for pair in spheres)
+            sum(sum((a - b) ** 2 for a, b in zip(*pair, strict=True)) < reach for pair in centres)
         )
     yield absence_unsearched(claim.absent)
     yield own_study_counted(assessment.own_studies)

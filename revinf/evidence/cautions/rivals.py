@@ -8,7 +8,14 @@ from revinf.evidence.cautions.thresholds import Thresholds
 __all__ = ["rival_ahead", "rivals_tied"]
 
 
-def rival_ahead(term: str, best_rival: str | None, probability: float | None, limits: Thresholds) -> Caution | None:
+def rival_ahead(
+    term: str,
+    best_rival: str | None,
+    probability: float | None,
+    limits: Thresholds,
+    *,
+    absent: bool = False,
+) -> Caution | None:
     """Warn where another process is more often active here than the claimed one, on its own studies."""
     if best_rival is None or probability is None or probability > limits.rival_weigh:
         return None
@@ -16,8 +23,8 @@ def rival_ahead(term: str, best_rival: str | None, probability: float | None, li
         code="rival-ahead",
         severity="stop" if probability <= limits.rival_stop else "weigh",
         message=(
-            f"{best_rival!r} is active here more often than {term!r}: the probability that the claimed process "
-            f"leads is {probability:.2f}."
+            f"{best_rival!r} is {'silent' if absent else 'active'} here more often than {term!r}: the probability "
+            f"that the claimed process leads is {probability:.2f}."
         ),
         evidence={"best_rival": best_rival, "probability_ahead": probability},
     )

@@ -9,7 +9,7 @@ from revinf.stats.estimates import Counts, Estimate
 __all__ = ["prior_driven", "thin_evidence"]
 
 
-def thin_evidence(counts: Counts, ratio: Estimate, limits: Thresholds) -> Caution | None:
+def thin_evidence(counts: Counts, ratio: Estimate, limits: Thresholds, *, absent: bool = False) -> Caution | None:
     """Warn where the counts are so few that the likelihood ratio could be almost anything."""
     width = ratio.high / ratio.low
     evidence = {"high_over_low": width, "hits": counts.active_total}
@@ -17,7 +17,10 @@ def thin_evidence(counts: Counts, ratio: Estimate, limits: Thresholds) -> Cautio
         return Caution(
             code="thin-evidence",
             severity="stop",
-            message="No counted study has a peak here: the answer is the prior of the ratio, not evidence.",
+            message=(
+                f"{'Every' if absent else 'No'} counted study has a peak here: the answer is the prior of the "
+                "ratio, not evidence."
+            ),
             evidence=evidence,
         )
     if width <= limits.thin_weigh:

@@ -17,8 +17,7 @@ def not_a_process(term: str, what: str) -> Caution | None:
         code="not-a-process",
         severity="weigh",
         message=(
-            f"'{term}' labels studies by {what}, it is not a mental process; a claim about it is no reverse "
-            "inference."
+            f"'{term}' labels studies by {what}, it is not a mental process; a claim about it is no reverse inference."
         ),
         evidence={"term": term, "kind": what},
     )

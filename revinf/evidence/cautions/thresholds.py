@@ -11,6 +11,8 @@ from revinf.exceptions import InputFileError
 
 __all__ = ["Thresholds", "read_thresholds"]
 
+_LARGEST = 1e15
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Thresholds:
@@ -103,7 +105,8 @@ def read_thresholds(path: str | Path | None) -> Thresholds:
     path = Path(path)
     try:
         content = tomllib.loads(path.read_text(encoding="utf-8-sig"))
-    except (OSError, UnicodeDecodeError, tomllib.TOMLDecodeError, RecursionError) as error:
+    # A number of thousands of digits is a plain ValueError, as are faults of encoding and of TOML.
+    except (OSError, ValueError, RecursionError) as error:
         reason = getattr(error, "strerror", None) or " ".join(str(error).split())[:120]
         raise InputFileError(
             f"cannot be read as TOML ({reason}); write lines such as thin_weigh = 10", path=path
@@ -128,5 +131,5 @@ def _checked(name: str, value: Any, default: Any, path: Path) -> Any:
 
 
 def _is_number(value: Any) -> bool:
-    """Tell whether a TOML value is a finite, non-negative number."""
-    return isinstance(value, (int, float)) and not isinstance(value, bool) and 0 <= value < float("inf")
+    """Tell whether a TOML value is a non-negative number of a size that a threshold can have."""
+    return isinstance(value, (int, float)) and not isinstance(value, bool) and 0 <= value <= _LARGEST

@@ -1,0 +1,99 @@
+"""The folder of an audit: written beside its target and put in place as a whole."""
+
+from __future__ import annotations
+
+import os
+import shutil
+import tempfile
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from revinf.exceptions import InputFileError
+from revinf.reports.audit_markdown import audit_markdown, author_markdown, reviewer_markdown
+from revinf.reports.audit_tables import audit_csv, audit_jsonl
+
+if TYPE_CHECKING:
+    from revinf.evidence.audit import Audit
+
+__all__ = ["write_audit_folder"]
+
+_MARK = ".revinf-audit"
+"""An empty file that says that a folder is an audit of ours and may be replaced."""
+
+
+def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...] = (), command: str = "") -> list[str]:
+    """Write report, tables and what each reader asked for.
+
+    Parameters
+    ----------
+    audit : Audit
+        From `revinf.audit`.
+    out : path
+        A folder; an older audit there is replaced as a whole.
+    readers : tuple of str
+        Of "author", "reviewer", "presenter".
+    command : str, optional
+        What reproduces it.
+
+    Returns
+    -------
+    list of str
+        Names of the files.
+
+    Raises
+    ------
+    InputFileError
+        If the target is something else than an audit, or cannot be written.
+    """
+    target = Path(os.path.abspath(out))
+    if target.exists() and not (target.is_dir() and ((target / _MARK).is_file() or not any(target.iterdir()))):
+        raise InputFileError("something that is not an audit stands here; give --out another name", path=out)
+    beside: Path | None = None
+    try:
+        target.parent.mkdir(parents=True, exist_ok=True)
+        for litter in target.parent.glob(f".{_escaped(target.name)}.audit-*"):
+            shutil.rmtree(litter, ignore_errors=True)
+        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-", dir=target.parent))
+        names = _fill(audit, beside, readers, command)
+        if target.exists():
+            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-", dir=target.parent))
+            target.rename(old / "old")
+            beside.rename(target)
+            shutil.rmtree(old)
+        else:
+            beside.rename(target)
+    except OSError as error:
+        raise InputFileError(
+            f"cannot be written ({error.strerror or error}); choose another place with --out", path=out
+        ) from None
+    finally:
+        if beside is not None and beside.exists():
+            shutil.rmtree(beside, ignore_errors=True)
+    return names
+
+
+def _escaped(name: str) -> str:
+    """Return a file name with its wildcards taken literally."""
+    return "".join(f"[{character}]" if character in "*?[" else character for character in name)
+
+
+def _fill(audit: Audit, folder: Path, readers: tuple[str, ...], command: str) -> list[str]:
+    """Write every file into a folder and return their names, sorted."""
+    texts = {
+        "report.md": audit_markdown(audit, command=command),
+        "claims.csv": audit_csv(audit),
+        "assessments.jsonl": audit_jsonl(audit),
+    }
+    if "author" in readers:
+        texts["for-author.md"] = author_markdown(audit)
+    if "reviewer" in readers:
+        texts["for-reviewer.md"] = reviewer_markdown(audit)
+    for name, text in texts.items():
+        (folder / name).write_text(text, encoding="utf-8")
+    if "presenter" in readers:
+        from revinf.reports.slides import write_slides
+
+        write_slides(audit, folder)
+    names = sorted(path.name for path in folder.iterdir())
+    (folder / _MARK).touch()
+    return names

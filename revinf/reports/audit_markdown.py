@@ -1,0 +1,140 @@
+"""An audit as Markdown: for a repository, a message, or a reviewer's form."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from revinf.knowledge import VERSION
+from revinf.reports.cells import markdown_cell
+from revinf.reports.comments import author_note, place_words, reviewer_comment, summary_sentence
+from revinf.reports.numbers import count, interval, ratio
+from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, agreement, grade_line
+
+if TYPE_CHECKING:
+    from revinf.evidence.audit import Audit, AuditedClaim
+
+__all__ = ["audit_markdown", "author_markdown", "reviewer_markdown"]
+
+
+def audit_markdown(audit: Audit, *, command: str = "") -> str:
+    """Return the whole audit as Markdown.
+
+    Parameters
+    ----------
+    audit : Audit
+        From `revinf.audit`.
+    command : str, optional
+        What reproduces it.
+
+    Returns
+    -------
+    str
+        The same audit gives the same text.
+    """
+    lines = ["# Claims against base rates", "", *_source(audit), "", "## At a glance", ""]
+    lines += ["| claim | term | ratio | direction | advice | stop | weigh |", "|---|---|---|---|---|---|---|"]
+    lines += [_glance(item) for item in audit.by_attention()]
+    for item in audit.by_attention():
+        lines += ["", *_section(item)]
+    lines += ["", *_left_over(audit), "## Limits", "", *(f"- {limit}" for limit in LIMITS), f"- {NO_INDIVIDUALS}"]
+    if command:
+        lines += ["", f"Made by revinf {VERSION} with `{command.replace('`', '')}`."]
+    return "\n".join(lines).rstrip() + "\n"
+
+
+def author_markdown(audit: Audit) -> str:
+    """Return what the author should change, claim by claim."""
+    lines = ["# For the author", "", *_source(audit)]
+    for item in audit.by_attention():
+        lines += ["", f"## {markdown_cell(item.claim.id)}: {markdown_cell(item.claim.term)}", ""]
+        lines += _quote(item)
+        lines.append(markdown_cell(author_note(item)))
+        if item.assessment is not None:
+            lines += ["", markdown_cell(summary_sentence(item.assessment))]
+    return "\n".join([*lines, "", NO_INDIVIDUALS, ""])
+
+
+def reviewer_markdown(audit: Audit) -> str:
+    """Return a comment for each claim, to be edited and sent."""
+    lines = ["# Comments for the authors", "", *_source(audit)]
+    for number, item in enumerate(audit.by_attention(), start=1):
+        lines += ["", f"{number}. {markdown_cell(reviewer_comment(item))}"]
+    return "\n".join([*lines, "", NO_INDIVIDUALS, ""])
+
+
+def _source(audit: Audit) -> list[str]:
+    """Say which literature was counted."""
+    facts = audit.source
+    lines = [
+        f"Counted in {markdown_cell(facts.name)}: {count(facts.n_studies)} studies (here: "
+        f"{markdown_cell(facts.study_is)}), fingerprint `{facts.fingerprint}`."
+    ]
+    if facts.invented:
+        lines += ["", "**INVENTED DATA: these numbers say nothing about any brain.**"]
+    return lines
+
+
+def _glance(item: AuditedClaim) -> str:
+    """Return one row of the overview."""
+    name, term = markdown_cell(item.claim.id), markdown_cell(item.claim.term)
+    if item.assessment is None or item.advice is None:
+        return f"| {name} | {term} | | not assessed | | | |"
+    severities = [caution.severity for caution in item.assessment.cautions]
+    answer = item.assessment.likelihood_ratio
+    return (
+        f"| {name} | {term} | {interval(answer.value, ratio)} | {answer.direction} | {item.advice.change} | "
+        f"{severities.count('stop')} | {severities.count('weigh')} |"
+    )
+
+
+def _quote(item: AuditedClaim) -> list[str]:
+    """Return the sentence and where it stands."""
+    if not item.claim.quote:
+        return []
+    place = f" ({markdown_cell(item.claim.location)})" if item.claim.location else ""
+    return [f"> {markdown_cell(item.claim.quote)}{place}", ""]
+
+
+def _section(item: AuditedClaim) -> list[str]:
+    """Return the section of one claim."""
+    lines = [f"## {markdown_cell(item.claim.id)}: {markdown_cell(item.claim.term)}", "", *_quote(item)]
+    lines.append(f"- Where: {markdown_cell(place_words(item))}")
+    if item.assessment is None or item.advice is None:
+        problem = item.problem.message if item.problem else ""
+        return [*lines, f"- Not assessed: {markdown_cell(problem)}"]
+    assessment, answer = item.assessment, item.assessment.likelihood_ratio
+    lines += [
+        f"- {markdown_cell(assessment.place.words)}",
+        f"- {markdown_cell(summary_sentence(assessment))}",
+        f"- {markdown_cell(grade_line(answer.direction, answer.headline_grade, answer.estimate_grade))}",
+        f"- In words: {markdown_cell(assessment.wording)}",
+        f"- Advice: {markdown_cell(author_note(item))}",
+    ]
+    if assessment.selectivity.rank is not None:
+        lines.append(
+            f"- Rank {assessment.selectivity.rank} of {assessment.selectivity.n_process_terms} processes; best "
+            f"rival {markdown_cell(str(assessment.selectivity.best_rival))}"
+        )
+    lines += [
+        f"- {caution.severity}, `{caution.code}`: {markdown_cell(caution.message)}" for caution in assessment.cautions
+    ]
+    return lines
+
+
+def _left_over(audit: Audit) -> list[str]:
+    """Return the claims without a place and the refused rows."""
+    lines: list[str] = []
+    if audit.unplaced:
+        lines += [f"## {agreement(len(audit.unplaced), 'claim')} still without coordinates", ""]
+        lines += [
+            f"- line {item.line}: {markdown_cell(item.claim)}, {markdown_cell(item.term)} {markdown_cell(item.quote)}"
+            for item in audit.unplaced
+        ]
+        lines.append("")
+    if audit.refused:
+        lines += [f"## {agreement(len(audit.refused), 'row')} refused", ""]
+        lines += [
+            f"- line {item.line}: {markdown_cell(item.claim)}: {markdown_cell(item.reason)}" for item in audit.refused
+        ]
+        lines.append("")
+    return lines

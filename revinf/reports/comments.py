@@ -1,0 +1,96 @@
+"""What each reader takes away: the author a rewording, the reviewer a comment with what would settle it."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from revinf.reports.numbers import coordinates, count, interval, probability, ratio
+
+if TYPE_CHECKING:
+    from revinf.evidence.assessment import Assessment
+    from revinf.evidence.audit import AuditedClaim
+
+__all__ = ["author_note", "place_words", "reviewer_comment", "summary_sentence"]
+
+
+def place_words(item: AuditedClaim) -> str:
+    """Return where a claim looks, in one phrase."""
+    claim = item.claim
+    if claim.peaks:
+        points = " and ".join(coordinates(peak) for peak in claim.peaks)
+        return f"{points} {claim.space}, within {claim.radius_mm:g} mm"
+    return str(claim.region) if claim.region is not None else f"mask {claim.mask}"
+
+
+def summary_sentence(assessment: Assessment) -> str:
+    """Return the counts, the ratio and the posterior in one sentence."""
+    counts, value, posterior = assessment.counts, assessment.likelihood_ratio.value, assessment.posterior
+    seen = "without activity" if assessment.claim.absent else "active"
+    return (
+        f"{count(counts.term_active)} of {count(counts.term_total)} studies of {assessment.claim.term} and "
+        f"{count(counts.other_active)} of {count(counts.other_total)} other studies are {seen} here: likelihood "
+        f"ratio {interval(value, ratio)}, posterior {interval(posterior.value)} at a prior of "
+        f"{probability(posterior.prior)}."
+    )
+
+
+def author_note(item: AuditedClaim) -> str:
+    """Return what the author should change, and why."""
+    if item.assessment is None or item.advice is None:
+        return f"Not assessed. {item.problem.message if item.problem else ''}".strip()
+    reasons = ", ".join(item.advice.reasons)
+    return f"{item.advice.change.capitalize()} ({reasons}). Suggested wording: {item.advice.sentence}"
+
+
+def reviewer_comment(item: AuditedClaim) -> str:
+    """Return a courteous, specific comment with the counts and what would settle the matter."""
+    where = f" ({item.claim.location})" if item.claim.location else ""
+    opening = f"The manuscript{where} takes activity at {place_words(item)} as a sign of {item.claim.term}."
+    if item.claim.absent:
+        opening = opening.replace("takes activity", "takes the absence of activity")
+    assessment = item.assessment
+    if assessment is None:
+        reason = item.problem.message if item.problem else "it could not be assessed."
+        return f"{opening} I could not check this step: {reason} Could the authors say what it rests on?"
+    facts = assessment.literature
+    source = f"In {facts.name} ({count(facts.n_studies)} {facts.study_is}), {summary_sentence(assessment)}"
+    invented = " (These base rates are INVENTED for demonstration.)" if facts.invented else ""
+    return f"{opening} {source}{invented} {_verdict(assessment)} {_request(assessment)}"
+
+
+def _verdict(assessment: Assessment) -> str:
+    """Say what the numbers mean for the claim."""
+    answer, term = assessment.likelihood_ratio, assessment.claim.term
+    if answer.direction == "against":
+        return f"On these base rates the finding speaks against {term} rather than for it."
+    if answer.direction == "undecided":
+        return f"On these base rates the finding does not tell {term} from other processes."
+    best, ahead = assessment.selectivity.best_rival, assessment.selectivity.probability_ahead
+    if best is not None and ahead is not None and ahead < 0.8:
+        return f"This speaks for {term}, but {best} would explain the finding about as well or better."
+    if answer.headline_grade == "bare":
+        return f"This speaks for {term}, but weakly."
+    return f"This speaks for {term}, and I have no objection to a cautiously worded claim."
+
+
+def _request(assessment: Assessment) -> str:
+    """Say what would settle the matter, or ease the reader's mind."""
+    needed = assessment.required_prior[0]
+    codes = {caution.code for caution in assessment.cautions}
+    asks = []
+    if assessment.likelihood_ratio.direction == "for":
+        asks.append(
+            f"say why a prior of {probability(needed.estimate)} or more, needed for a posterior of "
+            f"{needed.target:g}, was reasonable for this task"
+        )
+    else:
+        asks.append(
+            "rest the claim on behaviour or on a contrast that isolates the process, or word it as a hypothesis"
+        )
+    if codes & {"rival-ahead", "rivals-tied"} and assessment.counts.active_total:
+        asks.append(f"discuss {assessment.selectivity.best_rival} as another reading")
+    if "off-brain" in codes:
+        asks.append("check the coordinates and the space they are given in")
+    if "space-doubt" in codes:
+        asks.append("state the space of the coordinates")
+    return "Could the authors " + "; ".join(asks) + "?"

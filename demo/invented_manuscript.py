@@ -18,7 +18,7 @@ QUOTES: dict[str, tuple[int, str]] = {
                " disgust when the cook tasted the soup."),
     "c04": (2, "Activation of the dorsal midcingulate cortex indicates that viewers relived"
                " scenes of their own lives, that is, autobiographical memory."),
-    "c05": (3, "The left frontal pole, which has been tied to humour, lit up at the punch lines,"
+    "c05": (3, "The left fusiform gyrus, which has been tied to humour, lit up at the punch lines,"
                " proving that viewers found them funny."),
     "c06": (3, "The peak in the right caudate may reflect trust in the lighthouse keeper."),
     "c07": (4, "The left parietal peak implies that motor learning took place although nobody"

@@ -20,6 +20,7 @@ from invented_world import (
     CLAIM_COLUMNS,
     CLAIMS,
     FILLERS,
+    FLUKE_DRAWN_AT,
     FLUKE_PLACE,
     KIN,
     KIN_RATE,
@@ -50,9 +51,9 @@ TO_TALAIRACH = np.array(
         [0.0103, 0.0752, 0.8967, 3.6475],
     ]
 )
-CLAIMED = {place for _, _, place, *_ in CLAIMS}
+CLAIMED = {FLUKE_DRAWN_AT if place == FLUKE_PLACE else place for _, _, place, *_ in CLAIMS}
 HOMES = tuple({place: None for _, homes in PROCESSES.values() for _, ps in homes for place in ps})
-QUIET_PLACES = (*SELECTIVE_PLACES, *BROAD, FLUKE_PLACE)
+QUIET_PLACES = (*SELECTIVE_PLACES, *BROAD, FLUKE_DRAWN_AT)
 PLACES = tuple(dict.fromkeys((*HOMES, *FILLERS, *BROAD)))
 
 
@@ -101,7 +102,24 @@ def _draw_literature(rng: Generator) -> list[Study]:
         for study in paper:
             _draw_peaks(rng, study, planted.get(study.name), even)
     studies = [study for paper in papers for study in paper]
-    return studies + _odd_studies(rng)
+    studies += _odd_studies(rng)
+    for study in studies:
+        _move_fluke(study)
+    return studies
+
+
+def _move_fluke(study: Study) -> None:
+    """Move the lucky hits of the rare term to the home of another process; keep clear of the claimed point."""
+    step = np.array(FLUKE_PLACE) - np.array(FLUKE_DRAWN_AT)
+    moved = []
+    for place, stat in study.peaks:
+        point = np.array(place)
+        if RARE_TERMS[0][0] in study.processes and np.linalg.norm(point - FLUKE_DRAWN_AT) <= 10:
+            point = point + step
+        if tuple(point.tolist()) == FLUKE_PLACE:
+            point = point + np.array([1, 0, 0])
+        moved.append(((int(point[0]), int(point[1]), int(point[2])), stat))
+    study.peaks = moved
 
 
 def _paper_sizes(rng: Generator) -> list[int]:

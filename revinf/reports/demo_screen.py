@@ -41,7 +41,7 @@ def demo_screen(folder: Path) -> list[Any]:
                     "revinf check --literature literature --peak -22 -4 -18 --term fear",
                 ),
                 ("a busy place", "revinf check --literature literature --peak 36 22 -2 --term disgust"),
-                ("a lucky rare term", "revinf check --literature literature --peak -30 50 8 --term humour"),
+                ("a lucky rare term", "revinf check --literature literature --peak -44 -56 -14 --term humour"),
                 (
                     "outside the head",
                     "revinf check --literature literature --peak 60 -60 62 --term 'spatial attention'",

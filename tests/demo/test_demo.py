@@ -37,7 +37,7 @@ COUNTS = {
     ("c02", "study"): (12, 12, 20, 596),
     ("c03", "study"): (8, 22, 156, 454),
     ("c04", "study"): (0, 21, 158, 461),
-    ("c05", "study"): (2, 1, 5, 632),
+    ("c05", "study"): (2, 1, 45, 592),
     ("c06", "study"): (1, 3, 33, 603),
     ("c07", "study"): (2, 14, 20, 604),
     ("c08", "study"): (0, 24, 0, 616),
@@ -48,7 +48,7 @@ COUNTS = {
     ("c02", "group"): (9, 2, 19, 270),
     ("c03", "group"): (9, 7, 127, 157),
     ("c04", "group"): (2, 11, 126, 161),
-    ("c05", "group"): (2, 1, 5, 292),
+    ("c05", "group"): (2, 1, 37, 260),
     ("c06", "group"): (1, 3, 33, 263),
     ("c07", "group"): (1, 7, 20, 272),
     ("c08", "group"): (0, 15, 0, 285),
@@ -258,7 +258,7 @@ def test_claims_come_out_differently(unit: str) -> None:
     assert observed_ratio(claim_counts("c01", unit)) > 5  # fear: supported
     assert 0.8 < observed_ratio(claim_counts("c03", unit)) < 1.5  # disgust: says nothing
     assert observed_ratio(claim_counts("c04", unit)) < 0.5  # autobiographical memory: against
-    assert observed_ratio(claim_counts("c05", unit)) > 20  # humour: a huge ratio from two hits
+    assert observed_ratio(claim_counts("c05", unit)) > 5  # humour: a large ratio from two hits
 
 
 @pytest.mark.parametrize("unit", UNITS)

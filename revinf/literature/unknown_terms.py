@@ -9,6 +9,9 @@ from revinf.exceptions import UnknownTermError
 
 __all__ = ["unknown_term"]
 
+_LONGEST = 60
+"""Characters of a term that a message repeats."""
+
 
 def unknown_term(term: str, known: Sequence[str], where: str, near: Sequence[str] = ()) -> UnknownTermError:
     """Return the error for a term that labels nothing, with the terms that look like it.

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import Protocol
 
-__all__ = ["coordinates", "count", "interval", "p_value", "percent", "probability", "ratio", "strip"]
+__all__ = ["coordinates", "count", "interval", "p_value", "percent", "place_share", "probability", "ratio", "strip"]
 
 
 class HasInterval(Protocol):
@@ -117,6 +117,19 @@ def coordinates(point: Sequence[float]) -> str:
     '(54, −54, 24.5)'
     """
     return "(" + ", ".join(f"{value:g}".replace("-", "−") for value in point) + ")"
+
+
+def place_share(percentile: float) -> str:
+    """Write a share of places in percent, never rounded to none or all.
+
+    Examples
+    --------
+    >>> place_share(93.7), place_share(99.96), place_share(0.2)
+    ('94 %', 'over 99 %', 'under 1 %')
+    """
+    if percentile >= 99.5:
+        return "over 99 %"
+    return "under 1 %" if percentile < 0.5 else f"{percentile:.0f} %"
 
 
 def strip(low: float, middle: float, high: float, width: int, *, mark: float | None = None) -> str:

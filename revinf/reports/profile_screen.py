@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.numbers import coordinates, count, interval, p_value, percent, probability, ratio
+from revinf.reports.numbers import coordinates, count, interval, p_value, percent, place_share, probability, ratio
 from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import LIMITS, NO_INDIVIDUALS
 
@@ -46,7 +46,7 @@ def profile_screen(profile: Profile, *, width: int = 104) -> list[Any]:
     if facts.invented:
         opening.append(("", "INVENTED DATA: these numbers say nothing about any brain"))
     if breadth.activation_percentile is not None:
-        opening.append(("Busy", f"more than {breadth.activation_percentile:.0f} % of the places compared"))
+        opening.append(("Busy", f"more than {place_share(breadth.activation_percentile)} of the places compared"))
     if breadth.effective_processes is not None:
         opening.append(
             (

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.numbers import coordinates, count, interval, probability, ratio
+from revinf.reports.numbers import coordinates, count, interval, place_share, probability, ratio
 from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import active_words
 
@@ -106,7 +106,7 @@ def _breadth(assessment: Assessment) -> list[Any]:
     absent = assessment.claim.absent
     words = f"{count(total.active_total)} of {count(total.total)} studies are {active_words(absent)}"
     if breadth.activation_percentile is not None:
-        words += f", more than at {breadth.activation_percentile:.0f} % of the places compared"
+        words += f", more than at {place_share(breadth.activation_percentile)} of the places compared"
     if absent:  # how many processes share a silence says nothing about the place
         return [hanging([("silent", words)])]
     rows = [("busy", words)]

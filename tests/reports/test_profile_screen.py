@@ -10,7 +10,7 @@ from revinf.evidence.choices import Choices
 from revinf.evidence.profile import profile
 from revinf.evidence.sources import TableSource, as_source, choose_source
 from revinf.knowledge import table_path
-from revinf.reports.numbers import interval, p_value, probability, ratio
+from revinf.reports.numbers import interval, p_value, place_share, probability, ratio
 from revinf.reports.profile_screen import profile_screen
 from revinf.reports.wording import NO_INDIVIDUALS
 
@@ -93,7 +93,7 @@ def test_opening_says_where_how_many_how_busy_and_how_mixed(places, screen, widt
     assert "Place (−22, −4, −18), within 10 mm: left hemisphere, grey matter" in text
     assert "300 studies (here: papers), 73 terms" in text
     assert f"{found.hits} studies are active here" in text
-    assert f"more than {found.breadth.activation_percentile:.0f} % of the places" in text
+    assert f"more than {place_share(found.breadth.activation_percentile)} of the places" in text
     assert f"as if used equally by {interval(found.breadth.effective_processes, ratio)} of 54" in text
     assert f"{len(found.rows) - 20} more with --json" in text
 

@@ -8,7 +8,7 @@ from revinf.evidence.assess import assess
 from revinf.evidence.claim import Claim
 from revinf.evidence.sources import choose_source
 from revinf.reports.check_screen import check_screen
-from revinf.reports.numbers import coordinates, interval, probability, ratio
+from revinf.reports.numbers import coordinates, interval, place_share, probability, ratio
 from revinf.reports.terminal import fitting
 
 WIDTHS = (60, 80, 104)
@@ -129,7 +129,7 @@ def test_places_that_tell_nothing_apart_say_that_the_rank_says_nothing(answers, 
 def test_breadth_is_said_in_words(answers, screen, width):
     breadth = answers["disgust"].breadth
     text = flat(screen("disgust", width))
-    assert f"136 of 300 studies are active here, more than at {breadth.activation_percentile:.0f} %" in text
+    assert f"136 of 300 studies are active here, more than at {place_share(breadth.activation_percentile)}" in text
     assert f"as if used equally by {interval(breadth.effective_processes, ratio)} of 54 processes" in text
     assert f"by {interval(breadth.effective_domains, ratio)} of {breadth.n_domains} domains" in text
     assert f"{breadth.n_processes_above_own_rate} of 54 processes are credibly above" in text

@@ -26,8 +26,8 @@ def broad_region(
         code="broad-region",
         severity="weigh",
         message=(
-            f"This place is active under many processes: busier than {percentile:.0f} % of the grey matter, and "
-            f"as mixed as if {effective_processes.estimate:.1f} of {n_processes} processes used it equally."
+            f"This place is active under many processes: busier than {min(percentile, 99):.0f} % of the grey matter, "
+            f"and as mixed as if {effective_processes.estimate:.1f} of {n_processes} processes used it equally."
         ),
         evidence={
             "activation_percentile": percentile,

@@ -35,7 +35,7 @@ OUTSIDE = {
     "literature": {"numpy", "pandas"},
     "base_rates": {"numpy", "pandas"},
     "evidence": {"numpy", "pandas"},
-    "reports": {"rich", "matplotlib"},
+    "reports": {"rich", "matplotlib", "jinja2", "markupsafe"},
     "cli": {"typer"},
     "__init__": set(),
     "__main__": set(),

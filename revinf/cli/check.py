@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import os
+import shlex
+import sys
 from typing import Annotated
 
 import typer
@@ -20,6 +22,7 @@ from revinf.cli.options import (
     RatioPriorLimit,
     RatioPriorName,
     RegionName,
+    ReportFile,
     Space,
     TableFile,
     ThresholdsFile,
@@ -80,6 +83,7 @@ def check(
     thresholds: ThresholdsFile = None,
     every_rival: EveryRival = False,
     figure: FigureFile = None,
+    report: ReportFile = None,
     as_json: AsJson = False,
 ) -> None:
     """Check one claim: how much does activity in a place say about a process?
@@ -120,6 +124,11 @@ def check(
         from revinf.reports.robustness_figure import write_robustness_figure
 
         write_robustness_figure(assessment, figure)
+    if report is not None:
+        from revinf.evidence.audit import audit_of
+        from revinf.reports.html_report import write_html
+
+        write_html(audit_of(claim, assessment), report, command=shlex.join(["revinf", *sys.argv[1:]]))
     if as_json:
         from revinf.reports.machine import print_json
 

@@ -23,6 +23,7 @@ __all__ = [
     "RatioPriorLimit",
     "RatioPriorName",
     "RegionName",
+    "ReportFile",
     "Space",
     "TableFile",
     "ThresholdsFile",
@@ -109,6 +110,13 @@ ThresholdsFile = Annotated[
     ),
 ]
 EveryRival = Annotated[bool, typer.Option("--all", help="List all rivals in the JSON instead of the first 20.")]
+ReportFile = Annotated[
+    Path | None,
+    typer.Option(
+        "--report", metavar="FILE", help="Write the answer as one page for a browser, .html.", show_default=False
+    ),
+]
+
 FigureFile = Annotated[
     Path | None,
     typer.Option(

@@ -119,6 +119,8 @@ def assess(claim: Claim, source: Literature | BaseRateTable | Source, choices: C
             selectivity.kin_positions,
         ),
         level=choices.level,
+        ratio_prior=choices.ratio_prior,
+        ratio_limit=choices.ratio_limit,
     )
     assessment = _contrasted(assessment, claim, asked, answer, settings)
     return replace(assessment, cautions=cautions_of(assessment, claim, words, choices.thresholds))

@@ -61,6 +61,8 @@ class Assessment:
     pattern: Pattern | None = None
     own_studies: tuple[str, ...] = ()
     level: float = 0.95
+    ratio_prior: str = "shared"
+    ratio_limit: float = 20.0
     cautions: tuple[Caution, ...] = field(default_factory=tuple)
 
     @property

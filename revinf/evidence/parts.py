@@ -86,7 +86,7 @@ class Place:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class LiteratureFacts:
-    """Where the counts come from; `merged` is None where it is not known."""
+    """Where the counts come from; `merged` is None where it is not known, and a text is empty."""
 
     name: str
     n_studies: int
@@ -98,6 +98,9 @@ class LiteratureFacts:
     kind: str = "literature"
     merged: bool | None = None
     negative_peaks: int = 0
+    provenance: str = ""
+    licence: str = ""
+    citation: str = ""
 
     def to_dict(self) -> dict[str, Any]:
         """Return the source as plain data."""

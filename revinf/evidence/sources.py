@@ -18,7 +18,7 @@ from revinf.evidence.asked_region import DEFAULT_RADIUS_MM, AskedRegion
 from revinf.evidence.parts import LiteratureFacts, Place, TablePlace
 from revinf.evidence.place import place_of_mask, place_of_pattern, place_of_peak
 from revinf.exceptions import InvalidClaimError
-from revinf.knowledge import table_path
+from revinf.knowledge import describe_table, table_path
 from revinf.literature.background import Background
 from revinf.literature.literature import Literature
 from revinf.spaces.reference import brain_reference
@@ -98,6 +98,9 @@ class LiteratureSource:
             fingerprint=self.literature.fingerprint,
             merged=manifest.merged_by is not None,
             negative_peaks=manifest.counts.get("negative_peaks", 0),
+            provenance=description.source,
+            licence=description.licence,
+            citation=description.citation,
         )
 
     def region_hits(self, region: AskedRegion) -> list[NDArray[np.int64]]:
@@ -153,6 +156,7 @@ class TableSource:
     @property
     def facts(self) -> LiteratureFacts:
         """What the table is."""
+        described = describe_table("open_base_rates") if self.shipped else {}
         return LiteratureFacts(
             name=self.table.name,
             n_studies=self.table.n_studies,
@@ -163,6 +167,8 @@ class TableSource:
             fingerprint=self.table.fingerprint,
             kind="shipped table" if self.shipped else "table",
             merged=False if self.shipped else None,
+            provenance="; ".join(source["title"] for source in described.get("sources", ())),
+            licence=", ".join(licence["name"] for licence in described.get("licenses", ())),
         )
 
     def answer(self, region: AskedRegion, *, absent: bool = False) -> Answer:

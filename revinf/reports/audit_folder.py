@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 from revinf.exceptions import InputFileError
 from revinf.reports.audit_markdown import audit_markdown, author_markdown, reviewer_markdown
 from revinf.reports.audit_tables import audit_csv, audit_jsonl
+from revinf.reports.html_report import html_text
 
 if TYPE_CHECKING:
     from revinf.evidence.audit import Audit
@@ -80,6 +81,7 @@ def _escaped(name: str) -> str:
 def _fill(audit: Audit, folder: Path, readers: tuple[str, ...], command: str) -> list[str]:
     """Write every file into a folder and return their names, sorted."""
     texts = {
+        "report.html": html_text(audit, command=command),
         "report.md": audit_markdown(audit, command=command),
         "claims.csv": audit_csv(audit),
         "assessments.jsonl": audit_jsonl(audit),
@@ -89,7 +91,7 @@ def _fill(audit: Audit, folder: Path, readers: tuple[str, ...], command: str) ->
     if "reviewer" in readers:
         texts["for-reviewer.md"] = reviewer_markdown(audit)
     for name, text in texts.items():
-        (folder / name).write_text(text, encoding="utf-8")
+        (folder / name).write_text(text, encoding="utf-8", newline="\n")
     if "presenter" in readers:
         from revinf.reports.slides import write_slides
 

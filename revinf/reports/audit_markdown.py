@@ -7,13 +7,25 @@ from typing import TYPE_CHECKING
 from revinf.knowledge import VERSION
 from revinf.reports.cells import markdown_cell
 from revinf.reports.comments import author_note, place_words, reviewer_comment, summary_sentence
-from revinf.reports.numbers import count, interval, ratio
-from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, agreement, grade_line
+from revinf.reports.facts import (
+    breadth_facts,
+    contrast_facts,
+    range_words,
+    rank_words,
+    required_facts,
+    settings_words,
+)
+from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts
+from revinf.reports.numbers import count, interval, probability, ratio
+from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, active_words, agreement, grade_line
 
 if TYPE_CHECKING:
+    from revinf.evidence.assessment import Assessment
     from revinf.evidence.audit import Audit, AuditedClaim
 
 __all__ = ["audit_markdown", "author_markdown", "reviewer_markdown"]
+
+_RIVALS = 6
 
 
 def audit_markdown(audit: Audit, *, command: str = "") -> str:
@@ -36,7 +48,10 @@ def audit_markdown(audit: Audit, *, command: str = "") -> str:
     lines += [_glance(item) for item in audit.by_attention()]
     for item in audit.by_attention():
         lines += ["", *_section(item)]
-    lines += ["", *_left_over(audit), "## Limits", "", *(f"- {limit}" for limit in LIMITS), f"- {NO_INDIVIDUALS}"]
+    lines += ["", *_left_over(audit), "## How these numbers came about", "", methods_paragraph(audit), ""]
+    lines += [f"- {source}" for source in METHODS_SOURCES]
+    lines += ["", *(f"- {label}: {markdown_cell(text)}" for label, text in source_facts(audit))]
+    lines += ["", "## Limits", "", *(f"- {limit}" for limit in LIMITS), f"- {NO_INDIVIDUALS}"]
     if command:
         lines += ["", f"Made by revinf {VERSION} with `{command.replace('`', '')}`."]
     return "\n".join(lines).rstrip() + "\n"
@@ -110,15 +125,49 @@ def _section(item: AuditedClaim) -> list[str]:
         f"- In words: {markdown_cell(assessment.wording)}",
         f"- Advice: {markdown_cell(author_note(item))}",
     ]
-    if assessment.selectivity.rank is not None:
-        lines.append(
-            f"- Rank {assessment.selectivity.rank} of {assessment.selectivity.n_process_terms} processes; best "
-            f"rival {markdown_cell(str(assessment.selectivity.best_rival))}"
-        )
     lines += [
         f"- {caution.severity}, `{caution.code}`: {markdown_cell(caution.message)}" for caution in assessment.cautions
     ]
-    return lines
+    lines += ["", "What else could it mean?", "", *_rivals(assessment), ""]
+    facts = [("rank", rank_words(assessment)), *breadth_facts(assessment), *required_facts(assessment)]
+    lines += [f"- {label}: {markdown_cell(text)}" for label, text in [*facts, *contrast_facts(assessment)]]
+    return [*lines, "", "Does the answer hold?", "", *_robustness(assessment)]
+
+
+def _rivals(assessment: Assessment) -> list[str]:
+    """Return the processes that lead here, the claimed one first, as a table."""
+    counts = assessment.counts
+    rows = [
+        f"| **{markdown_cell(assessment.claim.term)}** | {count(counts.term_active)} of {count(counts.term_total)} | "
+        f"{interval(assessment.likelihood_ratio.value, ratio)} | |"
+    ]
+    for rival in assessment.selectivity.rivals[:_RIVALS]:
+        value = "" if rival.likelihood_ratio is None else interval(rival.likelihood_ratio, ratio)
+        ahead = "" if rival.probability_ahead is None else probability(rival.probability_ahead)
+        rows.append(
+            f"| {markdown_cell(rival.term)} | {count(rival.counts.term_active)} of "
+            f"{count(rival.counts.term_total)} | {value} | {ahead} |"
+        )
+    active = active_words(assessment.claim.absent)
+    return [f"| process | {active} | likelihood ratio | P(claim leads) |", "|---|---|---|---|", *rows]
+
+
+def _robustness(assessment: Assessment) -> list[str]:
+    """Return over which choices the answer holds, as a table."""
+    robust = assessment.robustness
+    rows = []
+    for choice, holds in robust.holds().items():
+        members = robust.of(choice)
+        kept = sum(row.holds for row in members)
+        answer = "holds" if holds else f"holds at {kept} of {len(members)}"
+        rows.append(f"| {choice} | {answer} | {settings_words(members)} | {range_words(members)} |")
+    left = robust.left_out
+    if left is not None and left.ratio is not None:
+        answer = "direction changes" if robust.direction_changes_without_one else "direction holds"
+        rows.append(
+            f"| one left out | {answer} | most without {markdown_cell(left.name)} | {interval(left.ratio, ratio)} |"
+        )
+    return ["| choice | direction and grade | tried | likelihood ratio |", "|---|---|---|---|", *rows]
 
 
 def _left_over(audit: Audit) -> list[str]:

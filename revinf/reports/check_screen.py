@@ -6,6 +6,7 @@ import math
 from typing import TYPE_CHECKING, Any
 
 from revinf.evidence.grading import grade_words
+from revinf.reports.facts import required_facts
 from revinf.reports.numbers import (
     HasInterval,
     coordinates,
@@ -216,14 +217,7 @@ def _posteriors(assessment: Assessment, drawn: bool) -> list[Any]:
                 f"{count(counts.active_total)} = {probability(prevalent.observed)} carry the term",
             )
         )
-    lines += [
-        (
-            f"for {item.target:.2f}",
-            f"the prior must have been {probability(item.estimate)}, or {probability(item.at_low)} at the "
-            "lower end of the ratio",
-        )
-        for item in assessment.required_prior
-    ]
+    lines += required_facts(assessment)
     return [
         heading(f"How probable is {assessment.claim.term!r}, given {given} activity?"),
         _table(header, rows, drawn),

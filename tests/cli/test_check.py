@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+from pathlib import Path
 
 import nibabel as nib
 import numpy as np
@@ -144,3 +145,16 @@ def test_without_a_source_the_shipped_base_rates_answer_and_say_so(revinf):
     assert found["literature"]["name"] == "open base rates"
     assert "small-default" in [item["code"] for item in found["cautions"]]
     assert not found["literature"]["invented"]
+
+
+def test_report_is_a_page_of_the_same_answer(revinf, tmp_path: Path) -> None:
+    page = tmp_path / "page.html"
+    asked = ("check", "--peak", "48", "-54", "24", "--term", "theory of mind", "--prior", "0.3")
+    done = revinf(*asked, "--report", page, "--json")
+    assert done.exit_code == 0
+    answer = json.loads(done.stdout)["posterior"]
+    assert f"{answer['estimate']:.3f} ({answer['low']:.3f}–{answer['high']:.3f})" in page.read_text(encoding="utf-8")
+    refused = revinf(*asked, "--report", tmp_path / "page.txt")
+    assert refused.exit_code == 2
+    assert refused.stdout == ""
+    assert refused.stderr.count("\n") == 1

@@ -24,7 +24,7 @@ def rival_ahead(
         severity="stop" if probability <= limits.rival_stop else "weigh",
         message=(
             f"{best_rival!r} is {'silent' if absent else 'active'} here more often than {term!r}: the probability "
-            f"that the claimed process leads is {probability:.2f}."
+            f"that the claimed process leads is {_hundredths(probability)}."
         ),
         evidence={"best_rival": best_rival, "probability_ahead": probability},
     )
@@ -41,7 +41,14 @@ def rivals_tied(term: str, best_rival: str | None, probability: float | None, li
         severity="note",
         message=(
             f"{term!r} and {best_rival!r} cannot be told apart here: the probability that the claimed process "
-            f"leads is {probability:.2f}."
+            f"leads is {_hundredths(probability)}."
         ),
         evidence={"best_rival": best_rival, "probability_ahead": probability},
     )
+
+
+def _hundredths(probability: float) -> str:
+    """Write a probability in words that never call it 0 or 1."""
+    if probability < 0.01:
+        return "under 0.01"
+    return "over 0.99" if probability > 0.99 else f"{probability:.2f}"

@@ -32,6 +32,8 @@ if TYPE_CHECKING:
     from revinf.literature.import_options import ImportOptions
     from revinf.literature.literature import Literature
     from revinf.literature.manifest import Description
+    from revinf.reports.audit_folder import write_audit_folder
+    from revinf.reports.html_report import write_html
 
 __all__ = [
     "AskedRegion",
@@ -52,6 +54,8 @@ __all__ = [
     "claims_from_frame",
     "profile",
     "read_claims",
+    "write_audit_folder",
+    "write_html",
 ]
 
 _HOMES = {
@@ -63,6 +67,8 @@ _HOMES = {
     "claims_from_frame": "revinf.evidence.claims_table",
     "profile": "revinf.evidence.profile",
     "read_claims": "revinf.evidence.claims_table",
+    "write_audit_folder": "revinf.reports.audit_folder",
+    "write_html": "revinf.reports.html_report",
     "Assessment": "revinf.evidence.assessment",
     "BaseRateTable": "revinf.base_rates.table",
     "Choices": "revinf.evidence.choices",

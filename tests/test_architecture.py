@@ -24,7 +24,7 @@ INSIDE = {
     "evidence": {"exceptions", "knowledge", "stats", "spaces", "literature", "base_rates"},
     "reports": {"exceptions", "knowledge", "evidence"},
     "cli": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "reports"},
-    "__init__": {"exceptions", "knowledge", "literature", "base_rates", "evidence"},
+    "__init__": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "reports"},
     "__main__": {"cli"},
 }
 OUTSIDE = {

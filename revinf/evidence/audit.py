@@ -6,6 +6,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+from revinf.base_rates.table import BaseRateTable
 from revinf.evidence.assess import assess
 from revinf.evidence.assessment import Assessment
 from revinf.evidence.cautions.caution import Caution
@@ -15,8 +16,9 @@ from revinf.evidence.claim import Claim
 from revinf.evidence.claims_table import ClaimsTable, Refusal, Unplaced
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.rewording import Advice, advise
-from revinf.evidence.sources import Source
+from revinf.evidence.sources import Source, as_source
 from revinf.exceptions import InvalidClaimError, RevinfError, UnknownTermError
+from revinf.literature.literature import Literature
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -91,7 +93,7 @@ def _attention(item: AuditedClaim) -> tuple[int, int, int]:
 
 def audit(
     claims: Sequence[Claim] | ClaimsTable,
-    source: Source,
+    source: Literature | BaseRateTable | Source,
     choices: Choices | None = None,
     *,
     progress: Callable[[int, int], None] | None = None,
@@ -102,7 +104,7 @@ def audit(
     ----------
     claims : sequence of Claim, or ClaimsTable
         What to assess.
-    source : Source
+    source : Literature, BaseRateTable or Source
         Where the counts come from.
     choices : Choices, optional
         As for `revinf.assess`.
@@ -119,11 +121,12 @@ def audit(
     InvalidClaimError
         If no claim could be assessed.
     """
+    asked = as_source(source)
     table = claims if isinstance(claims, ClaimsTable) else None
     listed = list(claims.claims) if isinstance(claims, ClaimsTable) else list(claims)
     audited = []
     for done, claim in enumerate(listed, start=1):
-        audited.append(_audited(claim, source, choices))
+        audited.append(_audited(claim, asked, choices))
         if progress is not None:
             progress(done, len(listed))
     if not any(item.assessment for item in audited):
@@ -131,7 +134,7 @@ def audit(
         refusal = table.refused[0].reason if table is not None and table.refused else ""
         raise InvalidClaimError(f"no claim could be assessed: {first or refusal or 'none names a place'}")
     return Audit(
-        source=source.facts,
+        source=asked.facts,
         audited=tuple(audited),
         unplaced=table.unplaced if table is not None else (),
         refused=table.refused if table is not None else (),

@@ -8,6 +8,7 @@ import tempfile
 from pathlib import Path
 from typing import TYPE_CHECKING
 
+from revinf.evidence.audit import checked_readers
 from revinf.exceptions import InputFileError
 from revinf.reports.audit_markdown import audit_markdown, author_markdown, reviewer_markdown
 from revinf.reports.audit_tables import audit_csv, audit_jsonl
@@ -43,9 +44,12 @@ def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...
 
     Raises
     ------
+    InvalidClaimError
+        If a reader is none of the three.
     InputFileError
         If the target is something else than an audit, or cannot be written.
     """
+    readers = checked_readers(readers)
     target = Path(os.path.abspath(out))
     if target.exists() and not (target.is_dir() and ((target / _MARK).is_file() or not any(target.iterdir()))):
         raise InputFileError("something that is not an audit stands here; give --out another name", path=out)

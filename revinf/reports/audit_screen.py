@@ -46,6 +46,10 @@ def audit_screen(audit: Audit, where: str, names: list[str], *, width: int = 104
     listed = [_row(item) for item in audit.by_attention()]
     table = plain_table(*fitting(header, listed, width, drop=(1, 3, 5)))
     parts: list[Any] = [hanging(rows), heading("Claims, those first that need most attention"), table]
+    without = [item for item in audit.by_attention() if item.assessment is None]
+    if without:
+        lines = [(one_line(item.claim.id), one_line(item.problem.message if item.problem else "")) for item in without]
+        parts += [heading(f"{agreement(len(without), 'claim')} not assessed"), hanging(lines)]
     if audit.unplaced:
         lines = [(f"line {item.line}", one_line(f"{item.claim}: {item.term}")) for item in audit.unplaced]
         parts += [heading(f"{agreement(len(audit.unplaced), 'claim')} still without coordinates"), hanging(lines)]

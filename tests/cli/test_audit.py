@@ -130,3 +130,12 @@ def test_a_fault_while_writing_leaves_the_older_audit_whole(
     assert done.stderr.count("\n") == 1
     assert {path.name: path.read_bytes() for path in out.iterdir()} == before
     assert sorted(path.name for path in tmp_path.iterdir()) == ["claims.csv", "report"]
+
+
+def test_a_claim_that_cannot_be_assessed_is_told_with_the_reason(revinf, tmp_path: Path) -> None:
+    table = tmp_path / "claims.csv"
+    table.write_text("claim,term,x,y,z\na,navigation,0,54,12\nb,navigaton,0,54,12\n", encoding="utf-8")
+    done = revinf("audit", table, "--out", tmp_path / "report")
+    assert done.exit_code == 0
+    assert "1 claim not assessed" in done.stdout
+    assert "it has 'navigation'" in done.stdout

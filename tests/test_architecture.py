@@ -22,9 +22,10 @@ INSIDE = {
     "literature": {"exceptions", "knowledge", "spaces"},
     "base_rates": {"exceptions", "stats", "spaces", "literature"},
     "evidence": {"exceptions", "knowledge", "stats", "spaces", "literature", "base_rates"},
-    "reports": {"exceptions", "knowledge", "evidence"},
-    "cli": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "reports"},
-    "__init__": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "reports"},
+    "manuscript": {"exceptions", "knowledge"},
+    "reports": {"exceptions", "knowledge", "evidence", "manuscript"},
+    "cli": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "manuscript", "reports"},
+    "__init__": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "manuscript", "reports"},
     "__main__": {"cli"},
 }
 OUTSIDE = {
@@ -35,6 +36,7 @@ OUTSIDE = {
     "literature": {"numpy", "pandas"},
     "base_rates": {"numpy", "pandas"},
     "evidence": {"numpy", "pandas"},
+    "manuscript": {"docx", "lxml", "pylatexenc", "pypdfium2"},
     "reports": {"rich", "matplotlib", "jinja2", "markupsafe"},
     "cli": {"typer"},
     "__init__": set(),

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import os
-import shlex
 import sys
 from pathlib import Path
 from typing import Annotated
@@ -21,6 +20,7 @@ from revinf.cli.options import (
     ThresholdsFile,
     Transform,
     parsed_columns,
+    reproducing_command,
 )
 
 __all__ = ["audit"]
@@ -54,6 +54,15 @@ def audit(
             show_default=False,
         ),
     ] = None,
+    peaks: Annotated[
+        Path | None,
+        typer.Option(
+            "--peaks",
+            metavar="FILE",
+            help="Peaks with the names of their places, for claims that name a place and have no coordinates.",
+            show_default=False,
+        ),
+    ] = None,
     column: NamedColumns = None,
     transform: Transform = "pooled",
     level: Level = 0.95,
@@ -80,13 +89,14 @@ def audit(
     choices = choices_of(
         level=level, ratio_prior=ratio_prior, ratio_limit=ratio_prior_limit, kinds=kinds, thresholds=thresholds
     )
-    listed = read_claims(claims, rename=parsed_columns(column), transform=transform)
+    listed = read_claims(claims, rename=parsed_columns(column), transform=transform, peaks=peaks)
     with counting("assessing claims") as progress:
         result = assess_all(listed, choose_source(literature, table, os.environ), choices, progress=progress)
-    command = shlex.join(["revinf", *sys.argv[1:]])
+    command = reproducing_command(sys.argv[1:])
     names = write_audit_folder(result, out, readers=readers, command=command)
     show(*audit_screen(result, str(out), names, width=screen_width()))
     failing = fails_gate(result, gate) if gate is not None else []
     if failing:
-        print(f"revinf: {len(failing)} claims do not reach {gate}: {', '.join(failing)}", file=sys.stderr)
+        verb = "claim does" if len(failing) == 1 else "claims do"
+        print(f"revinf: {len(failing)} {verb} not reach {gate}: {', '.join(failing)}", file=sys.stderr)
         raise typer.Exit(3)

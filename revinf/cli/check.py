@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import os
-import shlex
 import sys
 from typing import Annotated
 
@@ -28,6 +27,7 @@ from revinf.cli.options import (
     ThresholdsFile,
     Transform,
     parsed_peaks,
+    reproducing_command,
 )
 
 __all__ = ["check"]
@@ -128,7 +128,7 @@ def check(
         from revinf.evidence.audit import audit_of
         from revinf.reports.html_report import write_html
 
-        write_html(audit_of(claim, assessment), report, command=shlex.join(["revinf", *sys.argv[1:]]))
+        write_html(audit_of(claim, assessment), report, command=reproducing_command(sys.argv[1:]))
     if as_json:
         from revinf.reports.machine import print_json
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import shlex
+from collections.abc import Sequence
 from pathlib import Path
 from typing import Annotated
 
@@ -30,6 +32,7 @@ __all__ = [
     "Transform",
     "parsed_columns",
     "parsed_peaks",
+    "reproducing_command",
 ]
 
 LiteratureFolder = Annotated[
@@ -178,3 +181,24 @@ def parsed_columns(texts: list[str] | None) -> dict[str, str]:
             raise InvalidClaimError(f"--column needs OURS=YOURS, but got {text!r}; write study=experiment")
         columns[ours] = yours
     return columns
+
+
+def reproducing_command(arguments: Sequence[str]) -> str:
+    """Return a command line without the names of what it writes, so that equal input gives equal reports.
+
+    Examples
+    --------
+    >>> reproducing_command(["audit", "my claims.csv", "--out", "report", "--level=0.9"])
+    "revinf audit 'my claims.csv' --level=0.9"
+    """
+    written = ("--out", "--report", "--figure", "--coordinates")
+    kept: list[str] = []
+    skip = False
+    for argument in arguments:
+        if skip:
+            skip = False
+        elif argument in written:
+            skip = True
+        elif not argument.startswith(tuple(f"{name}=" for name in written)):
+            kept.append(argument)
+    return shlex.join(["revinf", *kept])

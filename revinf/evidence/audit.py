@@ -130,9 +130,11 @@ def audit(
         if progress is not None:
             progress(done, len(listed))
     if not any(item.assessment for item in audited):
-        first = next((item.problem.message for item in audited if item.problem), "")
-        refusal = table.refused[0].reason if table is not None and table.refused else ""
-        raise InvalidClaimError(f"no claim could be assessed: {first or refusal or 'none names a place'}")
+        reasons = [f"{item.claim.id}: {item.problem.message}" for item in audited if item.problem]
+        if table is not None:
+            reasons += [f"line {item.line}: {item.reason}" for item in table.refused]
+        more = f" (and {len(reasons) - 3} more)" if len(reasons) > 3 else ""
+        raise InvalidClaimError(f"no claim could be assessed: {'; '.join(reasons[:3]) or 'none names a place'}{more}")
     return Audit(
         source=asked.facts,
         audited=tuple(audited),
@@ -167,7 +169,8 @@ def fails_gate(result: Audit, gate: str) -> list[str]:
     Returns
     -------
     list of str
-        Claims whose direction is not for, whose headline grade is lower, or that could not be assessed.
+        Claims whose direction is not for, whose headline grade is lower, or that could not be assessed;
+        those without a place, and refused rows, do not pass either.
 
     Raises
     ------
@@ -183,7 +186,9 @@ def fails_gate(result: Audit, gate: str) -> list[str]:
         grade = ratio.headline_grade if ratio is not None and ratio.direction == "for" else None
         if grade is None or GATES.index(grade) < GATES.index(wanted):
             failing.append(item.claim.id)
-    return failing
+    waiting = [item.claim for item in result.unplaced] + [item.claim for item in result.refused if item.claim]
+    nameless = [f"line {item.line}" for item in result.refused if not item.claim]
+    return list(dict.fromkeys([*failing, *waiting, *nameless]))
 
 
 def checked_readers(readers: Sequence[str], gate: str | None = None) -> tuple[str, ...]:

@@ -36,6 +36,8 @@ class Claim(AskedRegion):
         Count again within the studies that carry any of these terms.
     rivals, excluded : sequence of str
         Rivals to show in any case, and terms never to count as rivals.
+    label : str, optional
+        What a reader calls the place; not used for the answer.
     quote, location : str, optional
         The sentence and where it stands.
     id : str, optional
@@ -63,6 +65,7 @@ class Claim(AskedRegion):
     context: Sequence[str] = ()
     rivals: Sequence[str] = ()
     excluded: Sequence[str] = ()
+    label: str = ""
     quote: str = ""
     location: str = ""
     id: str = ""

@@ -7,14 +7,15 @@ line; the other claims go on. A row without coordinates and region is a claim th
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 from revinf.evidence.claim import DEFAULT_RADIUS_MM, Claim, parsed_prior
+from revinf.evidence.named_peaks import filled, read_named_peaks
 from revinf.exceptions import InputFileError, InvalidClaimError, RevinfError
-from revinf.literature.rows import LINE, open_delimited
+from revinf.literature.rows import open_delimited
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -70,7 +71,13 @@ class ClaimsTable:
     refused: tuple[Refusal, ...]
 
 
-def read_claims(path: str | Path, *, rename: Mapping[str, str] | None = None, transform: str = "pooled") -> ClaimsTable:
+def read_claims(
+    path: str | Path,
+    *,
+    rename: Mapping[str, str] | None = None,
+    transform: str = "pooled",
+    peaks: str | Path | None = None,
+) -> ClaimsTable:
     """Read a claims table.
 
     Parameters
@@ -81,6 +88,9 @@ def read_claims(path: str | Path, *, rename: Mapping[str, str] | None = None, tr
         Our name of a column to the file's.
     transform : str, default "pooled"
         Which published transform fits rows in Talairach space.
+    peaks : path, optional
+        Peaks with the names of their places; a row without coordinates whose `place` is named there, once,
+        takes them.
 
     Returns
     -------
@@ -90,18 +100,28 @@ def read_claims(path: str | Path, *, rename: Mapping[str, str] | None = None, tr
     Raises
     ------
     InputFileError
-        If the file cannot be read as a table, or has no row.
+        If a file cannot be read as a table, or has no row.
     """
     table = open_delimited(Path(path), rename)
     table.require("claim", "term")
-    rows = [
-        (int(cells[LINE]), {str(name): str(cell).strip() for name, cell in cells.items() if name != LINE})
-        for block in table.blocks()
-        for cells in block.to_dict("records")
-    ]
-    if not rows:
+    rows: list[tuple[int, dict[str, str]]] = []
+    misfits: list[Refusal] = []
+    for line, cells in table.rows():
+        if any(cells[len(table.columns) :]):
+            reason = (
+                f"the row has {len(cells)} cells, the header {len(table.columns)}; put quotes around a cell that "
+                "holds a separator"
+            )
+            misfits.append(Refusal(claim=cells[table.columns.index("claim")], line=line, reason=reason))
+            continue
+        padded = [*cells, *[""] * (len(table.columns) - len(cells))]
+        rows.append((line, dict(zip(table.columns, padded, strict=False))))
+    if not rows and not misfits:
         raise InputFileError("the claims table has no rows; give at least one claim", path=path)
-    return _grouped(rows, transform, Path(path).name)
+    if peaks is not None:
+        places = read_named_peaks(peaks)
+        rows = [(line, filled(row, places)) for line, row in rows]
+    return _grouped(rows, transform, Path(path).name, misfits)
 
 
 def claims_from_frame(frame: pd.DataFrame, *, transform: str = "pooled") -> ClaimsTable:
@@ -144,11 +164,14 @@ def claims_from_frame(frame: pd.DataFrame, *, transform: str = "pooled") -> Clai
     return _grouped(rows, transform, "data frame")
 
 
-def _grouped(rows: list[tuple[int, dict[str, str]]], transform: str, name: str) -> ClaimsTable:
+def _grouped(
+    rows: list[tuple[int, dict[str, str]]], transform: str, name: str, misfits: Sequence[Refusal] = ()
+) -> ClaimsTable:
     """Group the rows by their claim's id and make the claims."""
     by_id: dict[str, list[dict[str, str]]] = {}
     lines: dict[str, list[int]] = {}
-    refused: list[Refusal] = []
+    refused: list[Refusal] = list(misfits)
+    spoiled = {misfit.claim for misfit in misfits}
     for line, row in rows:
         if not row["claim"]:
             refused.append(Refusal(claim="", line=line, reason="the claim has no id; number the claims"))
@@ -159,7 +182,10 @@ def _grouped(rows: list[tuple[int, dict[str, str]]], transform: str, name: str) 
     unplaced: list[Unplaced] = []
     for claim, members in by_id.items():
         outcome = _claim_of(claim, members, lines[claim], transform)
-        if isinstance(outcome, Claim):
+        if claim in spoiled:
+            reason = "another row of this pattern is refused, and the rest would be a different claim"
+            refused.extend(Refusal(claim=claim, line=line, reason=reason) for line in lines[claim])
+        elif isinstance(outcome, Claim):
             claims.append(outcome)
         elif isinstance(outcome, Unplaced):
             unplaced.append(outcome)
@@ -190,7 +216,8 @@ def _claim_of(
             points.append(point)
     first = rows[0]
     regions = {row["region"] for row in rows if row.get("region")}
-    if not faults and not points and not regions:
+    if not faults and len(points) < len(rows) and not (regions and not points):
+        # A pattern of which one place is not known yet is no smaller claim; it waits as a whole.
         return Unplaced(
             claim=name,
             line=lines[0],
@@ -198,8 +225,6 @@ def _claim_of(
             quote=first.get("quote", ""),
             location=first.get("location", ""),
         )
-    if not faults and points and len(points) < len(rows):
-        faults = [Refusal(claim=name, line=lines[0], reason="a place of this pattern has no coordinates")]
     if not faults:
         try:
             return _built(name, first, points, regions, transform)
@@ -256,6 +281,7 @@ def _built(name: str, row: dict[str, str], points: list[list[float]], regions: s
         prior=parsed_prior(row["prior"]) if row.get("prior") else 0.5,
         context=_terms(row.get("context", "")),
         rivals=_terms(row.get("rivals", "")),
+        label=(row.get("place") or row.get("region") or "") if points else "",
         quote=row.get("quote", ""),
         location=row.get("location", ""),
         radius_mm=radius_mm,

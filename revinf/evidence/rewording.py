@@ -94,13 +94,15 @@ def advise(assessment: Assessment) -> Advice:
         )
     others = _others(assessment)
     if others:
+        weak = ratio.headline_grade not in _DEMANDED
         return Advice(
             change="add the rivals",
             sentence=(
-                f"{where.capitalize()} is reported more often in studies of {term} than in others, and as much or "
-                f"more in studies of {others}; the present data do not tell them apart."
+                f"{where.capitalize()} is reported {'somewhat ' if weak else ''}more often in studies of {term} than "
+                f"in others{', which is weak evidence' if weak else ''}, and not demonstrably less often in studies "
+                f"of {others}; the present data do not tell them apart."
             ),
-            reasons=tuple(code for code in ("rival-ahead", "rivals-tied") if code in codes),
+            reasons=tuple(code for code in ("rival-ahead", "rivals-tied") if code in codes) or ("rank",),
         )
     if ratio.headline_grade not in _DEMANDED or "stop" in codes.values():
         return Advice(
@@ -124,8 +126,11 @@ def advise(assessment: Assessment) -> Advice:
 def _others(assessment: Assessment) -> str:
     """Return the rivals that are ahead of the claim or tied with it, as words."""
     codes = {caution.code for caution in assessment.cautions}
+    chosen = assessment.selectivity
     if not codes & {"rival-ahead", "rivals-tied"}:
-        return ""
+        # A table cannot set two processes against each other; that another one ranks higher is still said.
+        untold = chosen.probability_ahead is None and chosen.rank_informative and (chosen.rank or 1) > 1
+        return str(chosen.best_rival) if untold and chosen.best_rival is not None else ""
     names = [
         rival.term
         for rival in assessment.selectivity.rivals

@@ -54,6 +54,7 @@ class Selectivity:
     rivals: tuple[Rival, ...]
     kin: tuple[Rival, ...]
     kin_positions: tuple[int, ...] = ()
+    named: tuple[str, ...] = ()
 
     def to_dict(self) -> dict[str, Any]:
         """Return rank and best rival as plain data; rivals and kin stand elsewhere in the assessment."""
@@ -170,6 +171,7 @@ def select(
         rivals=tuple(rows),
         kin=tuple(kin_rows),
         kin_positions=tuple(np.flatnonzero(kin).tolist()),
+        named=request.named,
     )
 
 

@@ -112,6 +112,38 @@ class DelimitedFile:
         except (UnicodeDecodeError, OSError, EOFError, zlib.error, ValueError) as error:
             raise _unreadable(self.path, error) from None
 
+    def rows(self) -> Iterator[tuple[int, list[str]]]:
+        """Yield line and cells of one row after another, whatever their number; for tables refused row by row.
+
+        Yields
+        ------
+        int, list of str
+            Trimmed cells; rows of blanks only are left out.
+
+        Raises
+        ------
+        InputFileError
+            If the text is not UTF-8, holds NUL bytes, or a cell is absurdly long.
+        """
+        import csv
+
+        try:
+            with open_text(self.path) as stream:
+                reader = csv.reader(stream, delimiter=self.delimiter)
+                next(reader, None)
+                line = reader.line_num + 1
+                for cells in reader:
+                    trimmed = [cell.strip() for cell in cells]
+                    if any(trimmed):
+                        yield line, trimmed
+                    line = reader.line_num + 1
+        except csv.Error as error:
+            raise InputFileError(
+                f"cannot be read as a table ({error}); check for an open quote", path=self.path
+            ) from None
+        except (UnicodeDecodeError, OSError, EOFError, zlib.error) as error:
+            raise _unreadable(self.path, error) from None
+
 
 def open_delimited(path: Path, rename: Mapping[str, str] | None = None) -> DelimitedFile:
     r"""Read the header of a CSV or TSV file, plain or gzipped.
@@ -189,7 +221,12 @@ def _split_header(header: str, delimiter: str) -> list[str]:
 def _renamed(names: list[str], rename: Mapping[str, str], path: Path) -> tuple[str, ...]:
     """Return the header with the user's column names replaced by ours."""
     ours = {theirs: our for our, theirs in rename.items()}
+    # A spreadsheet leaves empty names behind its last column; they name nothing and cannot clash.
     columns = [ours.get(name, name) for name in names]
+    for number in range(len(columns), 0, -1):
+        if columns[number - 1]:
+            break
+        columns[number - 1] = f"column {number}"
     for position, name in enumerate(columns):
         if name in columns[:position]:
             raise InputFileError(f"column {name!r} stands twice in the header; rename one of them", path=path, row=1)

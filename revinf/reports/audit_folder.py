@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+import re
 import shutil
 import tempfile
 from pathlib import Path
@@ -50,18 +51,24 @@ def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...
         If the target is something else than an audit, or cannot be written.
     """
     readers = checked_readers(readers)
-    target = Path(os.path.abspath(out))
+    target = Path(os.path.realpath(out))
     if target.exists() and not (target.is_dir() and ((target / _MARK).is_file() or not any(target.iterdir()))):
         raise InputFileError("something that is not an audit stands here; give --out another name", path=out)
+    foreign = sorted(path.name for path in target.glob("*") if not _is_ours(path)) if target.is_dir() else []
+    if foreign:
+        raise InputFileError(
+            f"the older audit here also holds {foreign[0]!r}, which would be lost; move it, or choose another --out",
+            path=out,
+        )
     beside: Path | None = None
     try:
         target.parent.mkdir(parents=True, exist_ok=True)
-        for litter in target.parent.glob(f".{_escaped(target.name)}.audit-*"):
-            shutil.rmtree(litter, ignore_errors=True)
-        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-", dir=target.parent))
+        _sweep(target)
+        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
         names = _fill(audit, beside, readers, command)
+        beside.chmod(0o777 & ~_umask())  # as any folder that the user makes; until now it was private
         if target.exists():
-            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-", dir=target.parent))
+            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
             target.rename(old / "old")
             beside.rename(target)
             shutil.rmtree(old)
@@ -75,6 +82,43 @@ def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...
         if beside is not None and beside.exists():
             shutil.rmtree(beside, ignore_errors=True)
     return names
+
+
+def _is_ours(path: Path) -> bool:
+    """Tell whether a file in an older audit is one that an audit writes."""
+    return (
+        path.is_file()
+        and re.fullmatch(
+            r"report\.(?:html|md)|claims\.csv|assessments\.jsonl|for-\w+\.md|slides\.pdf|slide-\d+\.png|\..*", path.name
+        )
+        is not None
+    )
+
+
+def _sweep(target: Path) -> None:
+    """Remove what a killed run left behind, but not what a living one is writing."""
+    for litter in target.parent.glob(f".{_escaped(target.name)}.audit-*"):
+        found = re.search(r"\.audit-(\d+)-", litter.name)
+        if found is None or not _is_alive(int(found[1])):
+            shutil.rmtree(litter, ignore_errors=True)
+
+
+def _is_alive(process: int) -> bool:
+    """Tell whether a process runs."""
+    try:
+        os.kill(process, 0)
+    except ProcessLookupError:
+        return False
+    except OSError:
+        return True
+    return process != os.getpid()
+
+
+def _umask() -> int:
+    """Return the user's mask for new files."""
+    mask = os.umask(0)
+    os.umask(mask)
+    return mask
 
 
 def _escaped(name: str) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from typing import TYPE_CHECKING
 
 from revinf.knowledge import VERSION
@@ -14,6 +15,7 @@ from revinf.reports.facts import (
     rank_words,
     required_facts,
     settings_words,
+    shown_rivals,
 )
 from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts
 from revinf.reports.numbers import count, interval, probability, ratio
@@ -24,8 +26,6 @@ if TYPE_CHECKING:
     from revinf.evidence.audit import Audit, AuditedClaim
 
 __all__ = ["audit_markdown", "author_markdown", "reviewer_markdown"]
-
-_RIVALS = 6
 
 
 def audit_markdown(audit: Audit, *, command: str = "") -> str:
@@ -66,14 +66,21 @@ def author_markdown(audit: Audit) -> str:
         lines.append(markdown_cell(author_note(item)))
         if item.assessment is not None:
             lines += ["", markdown_cell(summary_sentence(item.assessment))]
+    lines += ["", *_left_over(audit)]
     return "\n".join([*lines, "", NO_INDIVIDUALS, ""])
 
 
 def reviewer_markdown(audit: Audit) -> str:
     """Return a comment for each claim, to be edited and sent."""
     lines = ["# Comments for the authors", "", *_source(audit)]
-    for number, item in enumerate(audit.by_attention(), start=1):
+    listed = [item for item in audit.by_attention() if item.assessment is not None]
+    for number, item in enumerate(listed, start=1):
         lines += ["", f"{number}. {markdown_cell(reviewer_comment(item))}"]
+    left = [reviewer_comment(item) for item in audit.by_attention() if item.assessment is None]
+    left += [f"line {item.line}: {item.claim}, still without coordinates" for item in audit.unplaced]
+    left += [f"line {item.line}: {item.claim}: {item.reason}" for item in audit.refused]
+    if left:
+        lines += ["", "## For the reviewer's eyes, not for sending", "", *(f"- {markdown_cell(text)}" for text in left)]
     return "\n".join([*lines, "", NO_INDIVIDUALS, ""])
 
 
@@ -84,6 +91,9 @@ def _source(audit: Audit) -> list[str]:
         f"Counted in {markdown_cell(facts.name)}: {count(facts.n_studies)} studies (here: "
         f"{markdown_cell(facts.study_is)}), fingerprint `{facts.fingerprint}`."
     ]
+    n_left = len(audit.refused) + len(audit.unplaced)
+    if n_left:
+        lines += ["", f"{agreement(n_left, 'row')} of the table could not be assessed; see the end."]
     if facts.invented:
         lines += ["", "**INVENTED DATA: these numbers say nothing about any brain.**"]
     return lines
@@ -107,7 +117,14 @@ def _quote(item: AuditedClaim) -> list[str]:
     if not item.claim.quote:
         return []
     place = f" ({markdown_cell(item.claim.location)})" if item.claim.location else ""
-    return [f"> {markdown_cell(item.claim.quote)}{place}", ""]
+    return [f"> {_leading(markdown_cell(item.claim.quote))}{place}", ""]
+
+
+def _leading(text: str) -> str:
+    """Return text whose first letters make no rule, list or heading."""
+    if re.match(r"[-+=>]", text):
+        return "\\" + text
+    return re.sub(r"^(\d{1,9})([.)])", r"\1\\\2", text)
 
 
 def _section(item: AuditedClaim) -> list[str]:
@@ -141,7 +158,7 @@ def _rivals(assessment: Assessment) -> list[str]:
         f"| **{markdown_cell(assessment.claim.term)}** | {count(counts.term_active)} of {count(counts.term_total)} | "
         f"{interval(assessment.likelihood_ratio.value, ratio)} | |"
     ]
-    for rival in assessment.selectivity.rivals[:_RIVALS]:
+    for rival in shown_rivals(assessment):
         value = "" if rival.likelihood_ratio is None else interval(rival.likelihood_ratio, ratio)
         ahead = "" if rival.probability_ahead is None else probability(rival.probability_ahead)
         rows.append(

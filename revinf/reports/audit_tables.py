@@ -7,6 +7,8 @@ import io
 import json
 from typing import TYPE_CHECKING, Any
 
+from revinf.evidence.assessment import SCHEMA
+from revinf.knowledge import VERSION
 from revinf.reports.cells import csv_cell
 
 if TYPE_CHECKING:
@@ -16,10 +18,15 @@ __all__ = ["COLUMNS", "audit_csv", "audit_jsonl", "audit_rows"]
 
 COLUMNS = (
     "claim",
+    "status",
+    "line",
     "term",
+    "place",
     "peaks",
     "space",
     "radius_mm",
+    "context",
+    "rivals",
     "quote",
     "location",
     "term_active",
@@ -48,9 +55,38 @@ COLUMNS = (
 
 
 def audit_jsonl(audit: Audit) -> str:
-    """Return one assessment a line, schema revinf/assessment/1; claims without an answer are left out."""
-    lines = [json.dumps(assessment.to_dict(), ensure_ascii=False, allow_nan=False) for assessment in audit.assessments]
-    return "".join(line + "\n" for line in lines)
+    """Return one assessment a line, schema revinf/assessment/1; a claim without an answer is kept with nulls."""
+    return "".join(json.dumps(_line(item, audit), ensure_ascii=False, allow_nan=False) + "\n" for item in audit.audited)
+
+
+def _line(item: AuditedClaim, audit: Audit) -> dict[str, Any]:
+    """Return an assessment as plain data; where there is none, its fields are null and a caution says why."""
+    if item.assessment is not None:
+        return item.assessment.to_dict()
+    claim = item.claim
+    asked = {
+        "id": claim.id,
+        "term": claim.term,
+        "region_kind": None,
+        "peaks": [list(peak) for peak in claim.peaks],
+        "space": claim.space,
+        "radius_mm": claim.radius_mm,
+        "prior": None if isinstance(claim.prior, str) else claim.prior,
+        "absent": claim.absent,
+        "context": list(claim.context),
+        "quote": claim.quote,
+        "location": claim.location,
+    }
+    known = {
+        "schema": SCHEMA,
+        "version": VERSION,
+        "claim": asked,
+        "literature": audit.source.to_dict(),
+        "rivals": [],
+        "kin": [],
+        "cautions": [item.problem.to_dict()] if item.problem else [],
+    }
+    return {**dict.fromkeys(audit.assessments[0].to_dict()), **known}
 
 
 def audit_rows(audit: Audit) -> list[dict[str, Any]]:
@@ -64,9 +100,24 @@ def audit_rows(audit: Audit) -> list[dict[str, Any]]:
     Returns
     -------
     list of dict
-        Keys as in `COLUMNS`.
+        Keys as in `COLUMNS`; claims that wait for a place and refused rows come last, with their lines.
     """
-    return [{**dict.fromkeys(COLUMNS), **_row(item)} for item in audit.audited]
+    rows = [_row(item) for item in audit.audited]
+    rows += [
+        {
+            "claim": item.claim,
+            "status": "without coordinates",
+            "line": item.line,
+            "term": item.term,
+            "quote": item.quote,
+            "location": item.location,
+        }
+        for item in audit.unplaced
+    ]
+    rows += [
+        {"claim": item.claim, "status": "refused", "line": item.line, "problem": item.reason} for item in audit.refused
+    ]
+    return [{**dict.fromkeys(COLUMNS), **row} for row in rows]
 
 
 def audit_csv(audit: Audit) -> str:
@@ -84,10 +135,14 @@ def _row(item: AuditedClaim) -> dict[str, Any]:
     claim = item.claim
     row: dict[str, Any] = {
         "claim": claim.id,
+        "status": "not assessed" if item.assessment is None else "assessed",
         "term": claim.term,
+        "place": claim.label or claim.region or claim.mask,
         "peaks": "; ".join("(" + ", ".join(f"{value:g}" for value in peak) + ")" for peak in claim.peaks),
-        "space": claim.space,
-        "radius_mm": claim.radius_mm,
+        "space": claim.space if claim.peaks else None,
+        "radius_mm": claim.radius_mm if claim.peaks else None,
+        "context": ";".join(claim.context),
+        "rivals": ";".join(claim.rivals),
         "quote": claim.quote,
         "location": claim.location,
     }

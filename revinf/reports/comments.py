@@ -18,7 +18,8 @@ def place_words(item: AuditedClaim) -> str:
     claim = item.claim
     if claim.peaks:
         points = " and ".join(coordinates(peak) for peak in claim.peaks)
-        return f"{points} {claim.space}, within {claim.radius_mm:g} mm"
+        label = f"{claim.label}, " if claim.label else ""
+        return f"{label}{points} {claim.space}, within {claim.radius_mm:g} mm"
     return str(claim.region) if claim.region is not None else f"mask {claim.mask}"
 
 
@@ -50,8 +51,9 @@ def reviewer_comment(item: AuditedClaim) -> str:
         opening = opening.replace("takes activity", "takes the absence of activity")
     assessment = item.assessment
     if assessment is None:
-        reason = item.problem.message if item.problem else "it could not be assessed."
-        return f"{opening} I could not check this step: {reason} Could the authors say what it rests on?"
+        # What the tool says of its input is for its user, never for the authors.
+        reason = item.problem.message if item.problem else "no reason is known"
+        return f"NOT FOR SENDING, not assessed: {item.claim.id}, {item.claim.term}. {reason.rstrip('.')}."
     facts = assessment.literature
     source = f"In {facts.name} ({count(facts.n_studies)} {facts.study_is}), {summary_sentence(assessment)}"
     invented = " (These base rates are INVENTED for demonstration.)" if facts.invented else ""
@@ -61,11 +63,16 @@ def reviewer_comment(item: AuditedClaim) -> str:
 def _verdict(assessment: Assessment) -> str:
     """Say what the numbers mean for the claim."""
     answer, term = assessment.likelihood_ratio, assessment.claim.term
+    if any(caution.code == "not-a-process" for caution in assessment.cautions):
+        return f"But {term} names what was shown, done or measured, not a mental process that activity could reveal."
     if answer.direction == "against":
         return f"On these base rates the finding speaks against {term} rather than for it."
     if answer.direction == "undecided":
         return f"On these base rates the finding does not tell {term} from other processes."
-    best, ahead = assessment.selectivity.best_rival, assessment.selectivity.probability_ahead
+    chosen = assessment.selectivity
+    best, ahead = chosen.best_rival, chosen.probability_ahead
+    if best is not None and ahead is None and chosen.rank_informative and (chosen.rank or 1) > 1:
+        return f"This speaks for {term}, but {best} is active here more often."
     if best is not None and ahead is not None and ahead < 0.8:
         return f"This speaks for {term}, but {best} would explain the finding about as well or better."
     if answer.headline_grade == "bare":
@@ -77,8 +84,11 @@ def _request(assessment: Assessment) -> str:
     """Say what would settle the matter, or ease the reader's mind."""
     needed = assessment.required_prior[0]
     codes = {caution.code for caution in assessment.cautions}
+    chosen = assessment.selectivity
     asks = []
-    if assessment.likelihood_ratio.direction == "for":
+    if "not-a-process" in codes:
+        asks.append("name the process that they mean")
+    elif assessment.likelihood_ratio.direction == "for":
         asks.append(
             f"say why a prior of {probability(needed.estimate)} or more, needed for a posterior of "
             f"{needed.target:g}, was reasonable for this task"
@@ -87,10 +97,12 @@ def _request(assessment: Assessment) -> str:
         asks.append(
             "rest the claim on behaviour or on a contrast that isolates the process, or word it as a hypothesis"
         )
-    if codes & {"rival-ahead", "rivals-tied"} and assessment.counts.active_total:
+    above = chosen.probability_ahead is None and chosen.rank_informative and (chosen.rank or 1) > 1
+    if (codes & {"rival-ahead", "rivals-tied"} or above) and assessment.counts.active_total and chosen.best_rival:
         asks.append(f"discuss {assessment.selectivity.best_rival} as another reading")
     if "off-brain" in codes:
         asks.append("check the coordinates and the space they are given in")
     if "space-doubt" in codes:
         asks.append("state the space of the coordinates")
-    return "Could the authors " + "; ".join(asks) + "?"
+    said = ", ".join(asks[:-1]) + (", and " if len(asks) > 1 else "") + asks[-1]
+    return f"Could the authors {said}?"

@@ -10,8 +10,19 @@ from revinf.reports.wording import active_words
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
     from revinf.evidence.robustness import RobustnessRow
+    from revinf.evidence.selectivity import Rival
 
-__all__ = ["breadth_facts", "contrast_facts", "range_words", "rank_words", "required_facts", "settings_words"]
+__all__ = [
+    "breadth_facts",
+    "contrast_facts",
+    "range_words",
+    "rank_words",
+    "required_facts",
+    "settings_words",
+    "shown_rivals",
+]
+
+_RIVALS = 6
 
 
 def required_facts(assessment: Assessment) -> list[tuple[str, str]]:
@@ -24,6 +35,12 @@ def required_facts(assessment: Assessment) -> list[tuple[str, str]]:
         )
         for item in assessment.required_prior
     ]
+
+
+def shown_rivals(assessment: Assessment) -> list[Rival]:
+    """Return the rivals of a report: the six that lead, and those that were asked for."""
+    chosen = assessment.selectivity
+    return [rival for at, rival in enumerate(chosen.rivals) if at < _RIVALS or rival.term in chosen.named]
 
 
 def rank_words(assessment: Assessment) -> str:

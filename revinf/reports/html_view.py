@@ -15,6 +15,7 @@ from revinf.reports.facts import (
     rank_words,
     required_facts,
     settings_words,
+    shown_rivals,
 )
 from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts
 from revinf.reports.numbers import count, interval, percent, probability, ratio
@@ -30,7 +31,6 @@ __all__ = ["MARKS", "report_view"]
 MARKS = {"stop": "■", "weigh": "▲", "note": "●"}
 """The shape alone tells the severities apart."""
 
-_RIVALS = 6
 _ORDER = ("not assessed", "drop", "soften", "add the rivals", "keep")
 
 
@@ -189,7 +189,7 @@ def _rivals(assessment: Assessment) -> list[dict[str, Any]]:
             "marks": None if rival.likelihood_ratio is None else ratio_marks(rival.likelihood_ratio),
             "ahead": "" if rival.probability_ahead is None else probability(rival.probability_ahead),
         }
-        for rival in chosen.rivals[:_RIVALS]
+        for rival in shown_rivals(assessment)
     ]
     own = {
         "term": one_line(assessment.claim.term),
@@ -200,7 +200,7 @@ def _rivals(assessment: Assessment) -> list[dict[str, Any]]:
         "ahead": "",
     }
     ours = chosen.shrunk_rate
-    place = sum(ours is not None and rival.shrunk_rate > ours for rival in chosen.rivals[:_RIVALS])
+    place = sum(ours is not None and rival.shrunk_rate > ours for rival in shown_rivals(assessment))
     return [*rows[:place], own, *rows[place:]]
 
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.facts import breadth_facts, contrast_facts, range_words, rank_words, settings_words
+from revinf.reports.facts import breadth_facts, contrast_facts, range_words, rank_words, settings_words, shown_rivals
 from revinf.reports.numbers import count, interval, probability, ratio
 from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import active_words
@@ -14,9 +14,6 @@ if TYPE_CHECKING:
     from revinf.evidence.selectivity import Rival
 
 __all__ = ["rivals_screen"]
-
-_ROWS = 6
-"""Rivals on the screen; the rest stand in the JSON."""
 
 
 def rivals_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
@@ -45,7 +42,8 @@ def rivals_screen(assessment: Assessment, *, width: int = 104) -> list[Any]:
 def _rivals(assessment: Assessment, width: int) -> list[Any]:
     """Return the processes that lead here, with the claimed one among them."""
     chosen, counts = assessment.selectivity, assessment.counts
-    rows = [_rival_row(rival) for rival in chosen.rivals[:_ROWS]]
+    shown = shown_rivals(assessment)
+    rows = [_rival_row(rival) for rival in shown]
     shrunk = "" if chosen.shrunk_rate is None else probability(chosen.shrunk_rate)
     own = [
         f"► {assessment.claim.term}",
@@ -56,8 +54,8 @@ def _rivals(assessment: Assessment, width: int) -> list[Any]:
     ]
     rows.insert(_place_of(assessment), own)
     notes = [("rank", rank_words(assessment))]
-    if len(chosen.rivals) > _ROWS:
-        notes.append(("", f"{len(chosen.rivals) - _ROWS} more with --json"))
+    if len(chosen.rivals) > len(shown):
+        notes.append(("", f"{len(chosen.rivals) - len(shown)} more with --json"))
     if chosen.kin:
         notes.append(("kin", ", ".join(rival.term for rival in chosen.kin) + " (largely the same studies)"))
     header = ["process", active_words(assessment.claim.absent), "shrunk rate", "likelihood ratio", "P(claim leads)"]
@@ -72,7 +70,7 @@ def _rivals(assessment: Assessment, width: int) -> list[Any]:
 
 def _place_of(assessment: Assessment) -> int:
     """Return where the claimed term stands among the rows shown."""
-    own, rows = assessment.selectivity.shrunk_rate, assessment.selectivity.rivals[:_ROWS]
+    own, rows = assessment.selectivity.shrunk_rate, shown_rivals(assessment)
     return sum(own is not None and rival.shrunk_rate > own for rival in rows)
 
 

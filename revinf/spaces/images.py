@@ -30,7 +30,9 @@ def image_stem(file: Path) -> str:
     return file.name[: -len(".nii.gz" if file.name.lower().endswith(".nii.gz") else ".nii")]
 
 
-def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np.float64]]:
+def read_image(
+    file: Path, what: str = "mask", *, nan_is_zero: bool = False
+) -> tuple[NDArray[Any], NDArray[np.float64]]:
     """Read a NIfTI image that marks places.
 
     Parameters
@@ -39,6 +41,8 @@ def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np
         .nii or .nii.gz: 3-D, or 4-D with one volume; at most 512 voxels an axis of at most 20 mm.
     what : str, default "mask"
         What it should be, for the messages.
+    nan_is_zero : bool, default False
+        Statistical maps often hold NaN outside the brain; it then counts as 0.
 
     Returns
     -------
@@ -85,6 +89,8 @@ def read_image(file: Path, what: str = "mask") -> tuple[NDArray[Any], NDArray[np
             f"voxels must be plain numbers, but are {values.dtype}; save the {what} as integers",
             path=file,
         )
+    if nan_is_zero and values.dtype.kind == "f":
+        values = np.where(np.isnan(values), 0, values)
     if not np.isfinite(values).all():
         raise InputFileError("voxels must be finite, but some are NaN or infinite; set them to 0", path=file)
     return values.reshape(values.shape[:3]), affine

@@ -139,3 +139,79 @@ def test_a_claim_that_cannot_be_assessed_is_told_with_the_reason(revinf, tmp_pat
     assert done.exit_code == 0
     assert "1 claim not assessed" in done.stdout
     assert "it has 'navigation'" in done.stdout
+
+
+def test_gate_is_not_passed_by_claims_that_were_never_assessed(revinf, claims: Path, tmp_path: Path) -> None:
+    done = revinf("audit", claims, "--out", tmp_path / "report", "--gate", "bare")
+    assert done.exit_code == 3
+    failing = done.stderr.split(": ")[-1].strip().split(", ")
+    assert {"c", "d"} <= set(failing)
+
+
+def test_a_row_with_a_stray_cell_is_refused_alone(revinf, tmp_path: Path) -> None:
+    table = tmp_path / "claims.csv"
+    table.write_text(
+        "claim,term,x,y,z,quote\na,navigation,0,54,12,They went, and came.\nb,navigation,0,54,12,fine\n",
+        encoding="utf-8",
+    )
+    done = revinf("audit", table, "--out", tmp_path / "report")
+    assert done.exit_code == 0
+    assert "the row has 7 cells, the header 6" in " ".join(done.stdout.split())
+
+
+def test_empty_names_behind_the_header_are_no_fault(revinf, tmp_path: Path) -> None:
+    table = tmp_path / "claims.csv"
+    table.write_text("claim,term,x,y,z,,\na,navigation,0,54,12,,\n , , ,,,,\n", encoding="utf-8")
+    done = revinf("audit", table, "--out", tmp_path / "report")
+    assert done.exit_code == 0
+    assert "refused" not in done.stdout
+
+
+def test_a_file_of_the_users_in_an_older_audit_is_never_lost(revinf, claims: Path, tmp_path: Path) -> None:
+    out = tmp_path / "report"
+    assert revinf("audit", claims, "--out", out).exit_code == 0
+    (out / "my notes.txt").write_text("mine", encoding="utf-8")
+    done = revinf("audit", claims, "--out", out)
+    assert done.exit_code == 2
+    assert "my notes.txt" in done.stderr
+    assert (out / "my notes.txt").read_text(encoding="utf-8") == "mine"
+
+
+def test_the_folder_can_be_opened_by_whom_the_users_mask_allows(revinf, claims: Path, tmp_path: Path) -> None:
+    import os
+
+    mask = os.umask(0o027)
+    try:
+        assert revinf("audit", claims, "--out", tmp_path / "report").exit_code == 0
+    finally:
+        os.umask(mask)
+    assert (tmp_path / "report").stat().st_mode & 0o777 == 0o750
+
+
+def test_table_tells_refused_and_waiting_rows(revinf, claims: Path, tmp_path: Path) -> None:
+    import csv
+
+    assert revinf("audit", claims, "--out", tmp_path / "report").exit_code == 0
+    with (tmp_path / "report" / "claims.csv").open(encoding="utf-8", newline="") as stream:
+        rows = list(csv.DictReader(stream))
+    assert [(row["claim"], row["status"], row["line"]) for row in rows] == [
+        ("a", "assessed", ""),
+        ("b", "assessed", ""),
+        ("d", "without coordinates", "5"),
+        ("c", "refused", "4"),
+    ]
+
+
+def test_peaks_with_names_fill_in_the_coordinates(revinf, tmp_path: Path) -> None:
+    (tmp_path / "claims.csv").write_text(
+        "claim,term,x,y,z,place\na,navigation,,,,Left thing\nb,navigation,,,,other\nc,navigation,,,,twice\n",
+        encoding="utf-8",
+    )
+    (tmp_path / "peaks.csv").write_text(
+        "place,x,y,z\nleft thing,24,-36,-14\ntwice,0,0,0\ntwice,2,2,2\n", encoding="utf-8"
+    )
+    done = revinf("audit", tmp_path / "claims.csv", "--peaks", tmp_path / "peaks.csv", "--out", tmp_path / "report")
+    assert done.exit_code == 0
+    lines = (tmp_path / "report" / "assessments.jsonl").read_text(encoding="utf-8").splitlines()
+    assert [json.loads(line)["claim"]["peaks"] for line in lines] == [[[24, -36, -14]]]
+    assert "2 claims still without coordinates" in done.stdout

@@ -65,10 +65,10 @@ def test_rows_of_a_pattern_must_agree(tmp_path: Path) -> None:
     assert "rows of one pattern must agree" in read.refused[1].reason
 
 
-def test_a_pattern_with_a_place_without_coordinates_is_refused(tmp_path: Path) -> None:
+def test_a_pattern_with_a_place_without_coordinates_waits_as_a_whole(tmp_path: Path) -> None:
     read = read_claims(table(tmp_path, "a,fear,1,2,3", "a,fear,,,"))
     assert not read.claims
-    assert "has no coordinates" in read.refused[0].reason
+    assert [(item.claim, item.line) for item in read.unplaced] == [("a", 2)]
 
 
 def test_a_claim_without_a_place_is_listed_not_refused(tmp_path: Path) -> None:

@@ -34,8 +34,16 @@ def result() -> Audit:
 
 def test_json_lines_are_the_assessments(result: Audit) -> None:
     lines = [json.loads(line) for line in audit_jsonl(result).splitlines()]
-    assert lines == [json.loads(json.dumps(answer.to_dict())) for answer in result.assessments]
-    assert [line["claim"]["id"] for line in lines] == ["c1", "=c2"]
+    assert lines[:2] == [json.loads(json.dumps(answer.to_dict())) for answer in result.assessments]
+    assert [line["claim"]["id"] for line in lines] == ["c1", "=c2", "c3"]
+
+
+def test_json_line_of_a_claim_without_an_answer_has_every_field_and_a_caution(result: Audit) -> None:
+    lines = [json.loads(line) for line in audit_jsonl(result).splitlines()]
+    assert set(lines[2]) == set(lines[0])
+    assert lines[2]["posterior"] is None
+    assert lines[2]["literature"] == lines[0]["literature"]
+    assert [caution["code"] for caution in lines[2]["cautions"]] == ["term-unlabelled"]
 
 
 def test_csv_holds_every_claim_and_runs_nothing(result: Audit) -> None:
@@ -75,7 +83,10 @@ def test_reviewer_comment_names_counts_and_asks_for_what_would_settle_it(result:
     text = reviewer_markdown(result)
     counts = result.assessments[0].counts
     assert f"{counts.term_active} of {counts.term_total} studies of semantic cognition" in text
-    assert text.count("Could the authors") == 3
+    assert text.count("Could the authors") == 2
+    aside = text.split("not for sending")[1]
+    assert "NOT FOR SENDING" in aside
+    assert "juggling" in aside
 
 
 def test_slides_are_one_a_claim_and_the_same_bytes_twice(result: Audit, tmp_path: Path) -> None:

@@ -26,12 +26,16 @@ if TYPE_CHECKING:
     from revinf.evidence.choices import Choices
     from revinf.evidence.claim import Claim
     from revinf.evidence.claims_table import claims_from_frame, read_claims
+    from revinf.evidence.map_peaks import map_peaks
     from revinf.evidence.profile import Profile, profile
     from revinf.evidence.sources import choose_source
     from revinf.literature.building import build_literature
     from revinf.literature.import_options import ImportOptions
     from revinf.literature.literature import Literature
     from revinf.literature.manifest import Description
+    from revinf.manuscript.found import Scan
+    from revinf.manuscript.reading import read_document
+    from revinf.manuscript.scanning import scan
     from revinf.reports.audit_folder import write_audit_folder
     from revinf.reports.html_report import write_html
 
@@ -46,14 +50,18 @@ __all__ = [
     "ImportOptions",
     "Literature",
     "Profile",
+    "Scan",
     "__version__",
     "assess",
     "audit",
     "build_literature",
     "choose_source",
     "claims_from_frame",
+    "map_peaks",
     "profile",
     "read_claims",
+    "read_document",
+    "scan",
     "write_audit_folder",
     "write_html",
 ]
@@ -66,6 +74,10 @@ _HOMES = {
     "choose_source": "revinf.evidence.sources",
     "claims_from_frame": "revinf.evidence.claims_table",
     "profile": "revinf.evidence.profile",
+    "Scan": "revinf.manuscript.found",
+    "map_peaks": "revinf.evidence.map_peaks",
+    "read_document": "revinf.manuscript.reading",
+    "scan": "revinf.manuscript.scanning",
     "read_claims": "revinf.evidence.claims_table",
     "write_audit_folder": "revinf.reports.audit_folder",
     "write_html": "revinf.reports.html_report",

@@ -13,7 +13,9 @@ from revinf.cli.check import check
 from revinf.cli.demo import demo
 from revinf.cli.inspect import inspect
 from revinf.cli.one_line import LineGroup, PeakCommand
+from revinf.cli.peaks import peaks
 from revinf.cli.profile import profile
+from revinf.cli.scan import scan
 from revinf.cli.tabulate import tabulate
 from revinf.cli.terms import terms
 
@@ -50,6 +52,8 @@ def _main(
 
 app.command(cls=PeakCommand)(check)
 app.command(cls=PeakCommand)(profile)
+app.command()(scan)
+app.command()(peaks)
 app.command()(audit)
 app.command()(build)
 app.command()(inspect)

@@ -10,7 +10,16 @@ from revinf.knowledge import demo_folder
 
 __all__ = ["FILES", "write_demonstration"]
 
-FILES = ("README.md", "peaks.csv", "annotations.csv", "studies.csv", "claims.csv", "manuscript.md")
+FILES = (
+    "README.md",
+    "peaks.csv",
+    "annotations.csv",
+    "studies.csv",
+    "claims.csv",
+    "manuscript.md",
+    "manuscript.docx",
+    "manuscript.pdf",
+)
 """What a user needs; the script that made them stays with the source."""
 
 

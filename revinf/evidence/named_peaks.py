@@ -65,8 +65,8 @@ def filled(row: Mapping[str, str], places: Mapping[str, Mapping[str, str]]) -> d
 
     Examples
     --------
-    >>> filled({"claim": "a", "x": "", "place": "Left amygdala"}, {"left amygdala": {"x": "-22", "y": "-4", "z": "-18"}})
-    {'claim': 'a', 'x': '-22', 'place': 'Left amygdala', 'y': '-4', 'z': '-18'}
+    >>> filled({"x": "", "place": "Left amygdala"}, {"left amygdala": {"x": "-22", "y": "-4", "z": "-18"}})
+    {'x': '-22', 'place': 'Left amygdala', 'y': '-4', 'z': '-18'}
     """
     name = normalise_term(row.get("place") or row.get("region") or "")
     if any(row.get(axis) for axis in "xyz") or name not in places:

@@ -43,6 +43,11 @@ def demo_screen(folder: Path) -> list[Any]:
                 ("a busy place", "revinf check --literature literature --peak 36 22 -2 --term disgust"),
                 ("a lucky rare term", "revinf check --literature literature --peak -44 -56 -14 --term humour"),
                 (
+                    "a manuscript",
+                    "revinf scan manuscript.docx --literature literature --out found.csv",
+                ),
+                ("all its claims", "revinf audit found.csv --literature literature --out report"),
+                (
                     "outside the head",
                     "revinf check --literature literature --peak 60 -60 62 --term 'spatial attention'",
                 ),

@@ -1,0 +1,1 @@
+"""From the documents people have to claims and coordinates; knows no statistics."""

@@ -1,0 +1,288 @@
+"""What a sentence does: infers a process from activity, or something else that merely looks like it.
+
+kinds: "claim" (activity there is taken as a sign of the process), "negated" (that step is declined or left
+open), "reported" (the step of others), "background" (a premise), "forward" (the task activated the place),
+"none".
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Sequence
+from itertools import pairwise
+
+from revinf.manuscript.cues import CueMention
+from revinf.manuscript.inference import Inference, Reading, Statement, StatementKind
+from revinf.manuscript.places import PlaceMention
+from revinf.manuscript.processes import ProcessMention
+from revinf.manuscript.statement_patterns import (
+    ACTIVITY,
+    ANAPHOR,
+    CONTRASTED,
+    DURING,
+    JOINT,
+    LABEL_OF,
+    NEGATOR,
+    SELF,
+    STOP,
+    SUBJECT,
+    TASK_NOUN,
+)
+
+__all__ = ["read_statement"]
+
+
+def read_statement(sentence: Reading, before: Reading | None = None) -> Statement:
+    """Say what a sentence does.
+
+    Parameters
+    ----------
+    sentence : Reading
+        The sentence.
+    before : Reading, optional
+        The one before it, for "This response suggests ...".
+
+    Returns
+    -------
+    Statement
+        A claim with its inferences, or another kind without.
+
+    Notes
+    -----
+    Where in doubt it says claim: who reads the list strikes out a false row in a second and never sees a
+    missed one.
+    """
+    found: list[Inference] = []
+    declined = reported = False
+    for cue in sentence.cues:
+        steps = _steps(sentence, before, cue)
+        if not steps:
+            continue
+        if _is_premise(sentence, cue):
+            continue
+        if _is_reported(sentence, cue):
+            reported = True
+        elif _is_declined(sentence, cue):
+            declined = True
+        else:
+            found += steps
+    if declined and not any(_is_stronger(sentence, item) for item in found):
+        return Statement(kind="negated")
+    if found and not reported:
+        return Statement(kind="claim", inferences=_once(found))
+    if reported:
+        return Statement(kind="reported")
+    return Statement(kind=_other_kind(sentence))
+
+
+def _is_stronger(sentence: Reading, item: Inference) -> bool:
+    """Tell whether a step stands clear of the negation that another cue of the sentence has."""
+    negations = [cue for cue in sentence.cues if cue.direction == "negation"]
+    return all(cue.start > item.process.end or cue.end + 60 < item.cue.start for cue in negations)
+
+
+def _other_kind(sentence: Reading) -> StatementKind:
+    """Return the kind of a sentence that infers nothing."""
+    directions = {cue.direction for cue in sentence.cues}
+    if not sentence.places:
+        return "none"
+    if sentence.processes and "premise" in directions:
+        return "background"
+    if sentence.processes and "report" in directions:
+        return "reported"
+    return "forward" if "task" in directions and ACTIVITY.search(sentence.text) else "none"
+
+
+def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[Inference]:
+    """Return the steps that a cue makes, whatever else the sentence says of them."""
+    if cue.direction in ("reverse", "therefore", "conclude"):
+        places, from_before = _antecedent(sentence, before, cue)
+        processes = _after(sentence, cue.end)
+        if cue.direction == "therefore" and not _is_assertion(sentence, cue):
+            return []
+    elif cue.direction == "backwards":
+        places = [place for place in sentence.places if place.start >= cue.end]
+        places = _groups(sentence.text, places)[0] if places else []
+        from_before = False
+        if not places and before is not None and ANAPHOR.search(sentence.text[cue.end :]):
+            places, from_before = list(before.places), True
+        processes = _task_free(sentence, [process for process in sentence.processes if process.end <= cue.start])
+    elif cue.direction == "because":
+        return _because(sentence, cue)
+    else:
+        return []
+    if not places:
+        return []
+    processes = [process for process in processes if process.listed] or processes
+    hedged = _is_hedged(sentence, cue)
+    return [
+        Inference(process=process, places=tuple(places), from_before=from_before, cue=cue, hedged=hedged)
+        for process in processes
+    ]
+
+
+def _antecedent(sentence: Reading, before: Reading | None, cue: CueMention) -> tuple[list[PlaceMention], bool]:
+    """Return the places whose activity a cue starts from, and whether they stand in the sentence before."""
+    here = [place for place in sentence.places if place.start < cue.end]
+    if here:
+        return _groups(sentence.text, here)[-1], False
+    if cue.direction == "conclude" and sentence.places and ACTIVITY.search(sentence.text):
+        return _groups(sentence.text, sentence.places)[-1], False
+    if before is None or not before.places or not ACTIVITY.search(before.text + sentence.text):
+        return [], False
+    points_back = ANAPHOR.search(sentence.text[: cue.end]) or cue.direction in ("conclude", "therefore")
+    return (_groups(before.text, before.places)[0], True) if points_back else ([], False)
+
+
+def _groups(text: str, places: Sequence[PlaceMention]) -> list[list[PlaceMention]]:
+    """Return places in groups: those that an "and" or a comma joins belong together; contrasted ones fall away."""
+    kept = [place for place in places if not CONTRASTED.search(text[: place.start])] or list(places)
+    groups: list[list[PlaceMention]] = [[kept[0]]]
+    for earlier, later in pairwise(kept):
+        between = re.sub(r"\([^)]*\)|\[[^\]]*\]", " ", text[earlier.end : later.start])
+        if later.start < earlier.end or JOINT.fullmatch(between):
+            groups[-1].append(later)
+        else:
+            groups.append([later])
+    return groups
+
+
+def _after(sentence: Reading, start: int) -> list[ProcessMention]:
+    """Return the processes that a cue leads to: those after it, up to where the thought turns."""
+    later = [process for process in sentence.processes if process.start >= start]
+    turn = STOP.search(sentence.text, start)
+    while turn and re.match(r"not only\b", sentence.text[turn.start() :], re.IGNORECASE):
+        turn = STOP.search(sentence.text, turn.end())
+    kept = [process for process in later if turn is None or process.start < turn.start()]
+    near = []
+    for process in kept:
+        # What matters is the clause that names the process: "from the response, that fear ...".
+        between = re.split(r"\bthat\b", sentence.text[start : process.start])[-1]
+        activity = ACTIVITY.search(between)
+        if activity and not LABEL_OF.search(between) and not _is_about_process(between):
+            continue
+        near.append(process)
+    return _task_free(sentence, near)
+
+
+def _is_about_process(between: str) -> bool:
+    """Tell whether activity words before a process only bring it in: "that viewers engaged in fear"."""
+    last = list(ACTIVITY.finditer(between))[-1]
+    return bool(
+        re.match(r"(?:engag\w*|recruit\w*|involvement|activ\w+|respon\w+)$", last.group(), re.IGNORECASE)
+        and re.fullmatch(
+            r"(?:\s+(?:in|of|the|a|an|some|to|their|his|her|its|with|own|more|covert|strong|by|\w+ly))*\s*",
+            between[last.end() :],
+        )
+    )
+
+
+def _task_free(sentence: Reading, processes: list[ProcessMention]) -> list[ProcessMention]:
+    """Leave out processes that only name the task, unless nothing else is there."""
+
+    def names_task(process: ProcessMention) -> bool:
+        following = sentence.text[process.end : process.end + 60]
+        return bool(TASK_NOUN.match(following) or DURING.search(sentence.text[: process.start]))
+
+    chosen = [process for process in processes if not names_task(process)]
+    chosen = [
+        process
+        for at, process in enumerate(chosen)
+        if not any(SUBJECT.match(sentence.text[process.end : other.start]) for other in chosen[at + 1 :])
+    ]
+    return chosen or processes[:1]
+
+
+def _is_assertion(sentence: Reading, cue: CueMention) -> bool:
+    """Tell whether what follows a connective says that a process went on, not that a place was active."""
+    processes = [process for process in sentence.processes if process.start >= cue.end]
+    if not processes:
+        return False
+    between = sentence.text[cue.end : processes[0].start]
+    return not any(place.start >= cue.end for place in sentence.places) and len(between) < 120
+
+
+def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
+    """Return the steps from a reason in which a place is active to what stands outside the reason."""
+    comma = re.search(r",\s", sentence.text[cue.end :])
+    at_start = cue.start < 15
+    if at_start and not comma:
+        return []
+    end = cue.end + comma.start() if at_start and comma else len(sentence.text)
+    reason = sentence.text[cue.end : end]
+    places = [place for place in sentence.places if cue.end <= place.start < end]
+    if not places or not ACTIVITY.search(reason):
+        return []
+    outside = [
+        process for process in sentence.processes if (process.start >= end if at_start else process.end <= cue.start)
+    ]
+    if at_start and any(place.start >= end for place in sentence.places):
+        return []
+    if not at_start and any(place.end <= cue.start for place in sentence.places):
+        return []
+    hedged = _is_hedged(sentence, cue)
+    return [
+        Inference(process=process, places=tuple(places), from_before=False, cue=cue, hedged=hedged)
+        for process in _task_free(sentence, [process for process in outside if process.listed] or outside)
+    ]
+
+
+def _is_hedged(sentence: Reading, cue: CueMention) -> bool:
+    """Tell whether a step is made with reserve."""
+    hedges = [other for other in sentence.cues if other.direction == "hedge"]
+    return cue.strength == "hedged" or any(abs(other.start - cue.start) < 60 for other in hedges)
+
+
+def _is_declined(sentence: Reading, cue: CueMention) -> bool:
+    """Tell whether a step is denied, doubted or asked."""
+    if sentence.text.rstrip().endswith("?"):
+        return True
+    for other in sentence.cues:
+        if other.direction == "open" and other.start <= cue.end:
+            return True
+        if other.direction == "negation" and other.start <= cue.end and cue.start - other.end < 45:
+            between = sentence.text[other.end : cue.start] if other.end < cue.start else ""
+            if not re.search(r"[,;:]\s|\bbut\b", between):
+                return True
+    lead = sentence.text[max(0, cue.start - 40) : cue.start]
+    return bool(NEGATOR.search(lead)) and not re.search(r"[,;:]|\bbut\b|not only", _last_negation(lead))
+
+
+def _last_negation(lead: str) -> str:
+    """Return what follows the last negation of a text, with it."""
+    found = list(
+        re.finditer(r"\b(?:not|cannot|never|no|nor|neither|hardly|scarcely|without)\b|n't\b", lead, re.IGNORECASE)
+    )
+    return lead[found[-1].start() :] if found else ""
+
+
+def _is_reported(sentence: Reading, cue: CueMention) -> bool:
+    """Tell whether a step is the step of others."""
+    for other in sentence.cues:
+        if other.direction != "report" or other.start > cue.end:
+            continue
+        if other.end < cue.start and SELF.search(sentence.text[other.end : cue.start]):
+            continue
+        if not SELF.search(sentence.text[max(0, other.start - 12) : other.end]):
+            return True
+    return False
+
+
+def _is_premise(sentence: Reading, cue: CueMention) -> bool:
+    """Tell whether a cue only stands inside a general statement about the place."""
+    for other in sentence.cues:
+        if other.direction != "premise" or other.start > cue.start:
+            continue
+        if other.start <= cue.start <= other.end or 0 <= cue.start - other.end <= 12:
+            return True
+    return False
+
+
+def _once(found: list[Inference]) -> tuple[Inference, ...]:
+    """Keep one step a process, the one with the nearest cue; a hedge of any counts."""
+    best: dict[str, Inference] = {}
+    for item in found:
+        known = best.get(item.process.term)
+        if known is None or abs(item.process.start - item.cue.end) < abs(known.process.start - known.cue.end):
+            best[item.process.term] = item
+    return tuple(sorted(best.values(), key=lambda item: item.process.start))

@@ -1,0 +1,116 @@
+"""Processes that the table does not list, by the nouns and verbs that bring them in.
+
+"tactile imagery", "a feeling of nostalgia", "viewers felt nostalgic": a reader would see a process there. They
+are taken only where nothing listed is found, and are marked, since no literature may know them.
+"""
+
+from __future__ import annotations
+
+import re
+
+from revinf.manuscript.phrases import Token
+from revinf.manuscript.processes import ProcessMention
+
+__all__ = ["unlisted_processes"]
+
+_HEADS_WORDS = """
+    perception processing memory memories learning control regulation imagery attention monitoring detection
+    inhibition retrieval recognition recollection integration anticipation prediction expectation awareness
+    reasoning inference cognition comprehension understanding production planning preparation selection
+    switching updating maintenance rehearsal encoding consolidation evaluation valuation appraisal judgement
+    judgment judgements judgments thinking thought thoughts imagination simulation empathy sympathy emotion
+    emotions motivation seeking aversion avoidance conditioning extinction suppression discrimination
+    categorisation categorization naming generation execution coordination orienting vigilance arousal
+    experience sensation segmentation representation computation estimation deliberation attribution attachment
+    bonding curiosity craving desire regret relief pride envy jealousy shame guilt contempt admiration awe
+    boredom frustration disappointment nostalgia hope loneliness gratitude longing suspense tension rehearsal
+    mimicry synchronisation synchronization adaptation exploration foraging persuasion introspection reflection
+    fluency completion binding abstraction association comparison search tracking mapping timing conflict effort
+    fatigue metacognition insight intuition hesitation doubt confidence mentalising mentalizing visualisation
+    visualization verbalisation verbalization remembering forgetting feeling feelings
+"""
+_HEADS = frozenset(_HEADS_WORDS.split())
+"""Last words of the names of processes."""
+
+_LOOSE_WORDS = """
+    experience feeling feelings representation computation reflection effort association comparison search
+    mapping conflict tension selection adaptation completion execution sensation thought thoughts tracking
+    timing generation preparation binding control learning memory emotion emotions attention awareness
+    understanding thinking
+"""
+_LOOSE = frozenset(_LOOSE_WORDS.split())
+"""Heads that alone say too little; a word before them must say of what."""
+
+_FELT = re.compile(
+    r"\b(?:felt|feel|feeling|experienced|experience|experiencing|sensed|became|were|grew)\s+"
+    r"(?:(?:a|an|some|the|more|very|rather|quite|strong|strongly|deep|deeply|intense|intensely|genuinely|indeed)\s+)*"
+    r"(?P<what>[a-z][a-z-]+(?:al|ed|ic|ous|ful|ive|ing|ious|less|ant|ent|gia|ness|ment|ity|tion|ion|ry|ief|"
+    r"ror|ror|dom|ship|thy))\b"
+)
+_STATE_OF = re.compile(
+    r"\b(?:feelings?|sense|state|experience|sensation|moment|kind|form|act|process|processes|bout)\s+of\s+"
+    r"(?:(?:a|an|the|some|their|strong|mild|deep)\s+)*(?P<what>[a-z][a-z-]+(?:\s+[a-z][a-z-]+)?)\b"
+)
+_STOP_WORDS = """
+    the a an of in on at to for with by from and or but not as than that this these those their his her its our
+    my some any no such each every all both more most less least very strong stronger weak mere covert
+    spontaneous automatic ongoing increased decreased enhanced heightened greater active during after before
+    while when where which who whose is are was were be been being has have had do does did may might could
+    would should can must will greater higher lower same other another different underlying kind form form signs
+    sign evidence engagement recruitment involvement presence use current present own implicit explicit general
+    additional successful possible likely genuine true actual real further continued
+"""
+_STOP = frozenset(_STOP_WORDS.split())
+
+
+_VERB = re.compile(
+    r"(?:suggest|indicat|impl[iy]|reflect|show|reveal|signal|demonstrat|point|mean|meant|evok|engag|involv|support|requir|"
+    r"induc|activat|index|denot|prov[ei]|confirm|betray|convey|mirror|express|document|betoken|trigger|recruit)\w*$"
+)
+
+
+def unlisted_processes(text: str, words: list[Token]) -> list[ProcessMention]:
+    """Return what looks like a process in a sentence.
+
+    Parameters
+    ----------
+    text : str
+        The sentence.
+    words : list of Token
+        Its words.
+
+    Returns
+    -------
+    list of ProcessMention
+        Marked as not listed; the term is the words themselves.
+
+    Examples
+    --------
+    >>> from revinf.manuscript.phrases import tokens
+    >>> sentence = "This suggests tactile imagery, or that viewers felt nostalgic."
+    >>> [mention.term for mention in unlisted_processes(sentence, tokens(sentence))]
+    ['tactile imagery', 'nostalgic']
+    """
+    found: list[ProcessMention] = []
+    for position, word in enumerate(words):
+        if word.text.lower() not in _HEADS:
+            continue
+        first = position
+        while first > 0 and position - first < 2 and words[first].joined and _modifies(words[first - 1]):
+            first -= 1
+        if first == position and word.text.lower() in _LOOSE:
+            continue
+        start, end = words[first].start, word.end
+        found.append(ProcessMention(term=text[start:end].lower(), start=start, end=end, listed=False))
+    for pattern in (_FELT, _STATE_OF):
+        for match in pattern.finditer(text):
+            start, end = match.span("what")
+            if not any(mention.start < end and start < mention.end for mention in found):
+                found.append(ProcessMention(term=match["what"], start=start, end=end, listed=False))
+    return sorted(found, key=lambda mention: mention.start)
+
+
+def _modifies(word: Token) -> bool:
+    """Tell whether a word may belong to the name of a process."""
+    text = word.text.lower()
+    return text not in _STOP and text.isalpha() and not text.endswith("ly") and _VERB.match(text) is None

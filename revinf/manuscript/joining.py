@@ -120,7 +120,7 @@ def joined(lines: Sequence[tuple[str, str]], *, kind: Kind = "prose") -> Block:
         line = " ".join(raw.split())
         if not line:
             continue
-        cut = re.search(r"([^\W\d_]+)[-\u2010\u2011]$", text)
+        cut = re.search(r"([^\W\d_]+)[-\u2010\u2011]$", text[-60:])
         if cut and re.match(r"[a-zà-ÿ]", line):
             if cut.group(1).lower() not in _KEPT:
                 text = text[:-1]

@@ -18,6 +18,8 @@ from revinf.manuscript.lines import blocks_of_lines
 __all__ = ["read_pdf", "without_running_heads"]
 
 _MOST_PAGES = 5_000
+_DEPTH = 2
+"""Lines at the head and at the foot of a page that may run through the document."""
 
 
 def read_pdf(path: Path, progress: Callable[[int, int], None] | None = None) -> list[Block]:
@@ -100,12 +102,12 @@ def without_running_heads(pages: list[list[str]]) -> list[list[str]]:
     edges = Counter(
         re.sub(r"\d+", "#", line.strip())
         for page in pages
-        for line in {line for line in (*_edge(page, 3),) if line.strip()}
+        for line in {line for line in (*_edge(page, _DEPTH),) if line.strip()}
     )
     often = {line for line, times in edges.items() if times >= max(3, 0.5 * len(pages))}
     kept = []
     for page in pages:
-        ends = set(map(id, _edge(page, 3)))
+        ends = set(map(id, _edge(page, _DEPTH)))
         body = [
             line
             for line in page

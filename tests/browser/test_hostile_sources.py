@@ -102,9 +102,6 @@ def test_hostile_terms_studies_and_description_of_a_literature_show_as_themselve
         assert any(text in heading for heading in tab.locator("article h3").all_inner_texts())
 
 
-@pytest.mark.xfail(
-    raises=AssertionError, reason="the words for screen readers in a wide table's head stand outside its own scrolling"
-)
 def test_words_of_five_hundred_letters_in_a_literature_do_not_widen_the_page(visit: Any, literature_page: Path) -> None:
     tab = visit(literature_page, 400, 800)
     draw_all(tab)

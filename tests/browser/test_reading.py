@@ -25,11 +25,6 @@ def faults_of_level_a_or_aa(tab: Any, context: str | None = None) -> list[tuple[
     return [(fault["id"], [node["target"] for node in fault["nodes"][:3]]) for fault in found.response["violations"]]
 
 
-@pytest.mark.xfail(
-    raises=AssertionError,
-    reason="below 390 pixels the words for screen readers in the tables' heads, and from 737 to 808 pixels the "
-    "columns of the claims at a glance, stand out over the side",
-)
 @pytest.mark.parametrize("name", ["demo_page", "hostile_page"])
 def test_no_usual_width_scrolls_sideways(name: str, visit: Any, request: pytest.FixtureRequest) -> None:
     tab = visit(request.getfixturevalue(name), 400, 800)
@@ -57,9 +52,6 @@ def test_controls_and_every_heading_are_in_sight_between_the_edges(
             assert 0 <= box["x"] < box["x"] + box["width"] <= width
 
 
-@pytest.mark.xfail(
-    raises=AssertionError, reason="the prior stays at the top of a low window, too, and covers most of it"
-)
 def test_prior_leaves_most_of_a_low_window_to_the_text(visit: Any, demo_page: Path) -> None:
     tab = visit(demo_page, 320, 256)  # 1280 x 1024 at 400 %
     slide_to(tab, 77)
@@ -121,7 +113,6 @@ def test_paper_carries_every_claim_with_the_numbers_on_the_screen(visit: Any, de
         assert f"posterior {posterior} at a prior of 0.770" in text
 
 
-@pytest.mark.xfail(raises=AssertionError, reason="the sentence that the advice is of another prior is not on paper")
 def test_paper_of_a_moved_prior_says_that_it_was_moved(visit: Any, demo_page: Path) -> None:
     tab = visit(demo_page)
     slide_to(tab, 77)

@@ -2,7 +2,7 @@
 (() => {
   const byId = (id) => document.getElementById(id);
   const controls = byId("controls"), slider = byId("prior-slider"), typed = byId("prior-value");
-  const reset = byId("prior-reset"), said = byId("prior-said");
+  const reset = byId("prior-reset"), said = byId("prior-said"), paper = byId("prior-on-paper");
   const asked = said.textContent, first = { slider: slider.value, typed: typed.value };
 
   // Written as the rest of revinf writes a probability: three decimals, never rounded to 0 or 1, and a tie
@@ -49,7 +49,8 @@
     for (const item of priors) item.element.textContent = written(prior);
     typed.removeAttribute("aria-invalid");
     slider.setAttribute("aria-valuetext", written(prior));
-    said.textContent = `All posteriors stand at a prior of ${prior}. Advice, wordings and cautions stay those of the prior asked.`;
+    paper.hidden = false;
+    paper.textContent = said.textContent = `All posteriors stand at a prior of ${prior}. Advice, wordings and cautions stay those of the prior asked.`;
   };
 
   slider.addEventListener("input", () => {
@@ -78,6 +79,7 @@
     typed.removeAttribute("aria-invalid");
     slider.removeAttribute("aria-valuetext");
     said.textContent = asked;
+    paper.hidden = true;
   });
   controls.hidden = false;
 })();

@@ -16,6 +16,7 @@ from revinf.cli.one_line import LineGroup, PeakCommand
 from revinf.cli.peaks import peaks
 from revinf.cli.profile import profile
 from revinf.cli.scan import scan
+from revinf.cli.settle import settle
 from revinf.cli.tabulate import tabulate
 from revinf.cli.terms import terms
 
@@ -52,6 +53,7 @@ def _main(
 
 app.command(cls=PeakCommand)(check)
 app.command(cls=PeakCommand)(profile)
+app.command(cls=PeakCommand)(settle)
 app.command()(scan)
 app.command()(peaks)
 app.command()(audit)

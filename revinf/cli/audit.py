@@ -19,6 +19,7 @@ from revinf.cli.options import (
     TableFile,
     ThresholdsFile,
     Transform,
+    Without,
     parsed_columns,
     reproducing_command,
 )
@@ -36,6 +37,7 @@ def audit(
     ],
     literature: LiteratureFolder = None,
     table: TableFile = None,
+    without: Without = None,
     reader: Annotated[
         list[str] | None,
         typer.Option(
@@ -91,7 +93,9 @@ def audit(
     )
     listed = read_claims(claims, rename=parsed_columns(column), transform=transform, peaks=peaks)
     with counting("assessing claims") as progress:
-        result = assess_all(listed, choose_source(literature, table, os.environ), choices, progress=progress)
+        result = assess_all(
+            listed, choose_source(literature, table, os.environ, without or ()), choices, progress=progress
+        )
     command = reproducing_command(sys.argv[1:])
     names = write_audit_folder(result, out, readers=readers, command=command)
     show(*audit_screen(result, str(out), names, width=screen_width()))

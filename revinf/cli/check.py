@@ -26,6 +26,7 @@ from revinf.cli.options import (
     TableFile,
     ThresholdsFile,
     Transform,
+    Without,
     parsed_peaks,
     reproducing_command,
 )
@@ -43,6 +44,7 @@ def check(
     region: RegionName = None,
     literature: LiteratureFolder = None,
     table: TableFile = None,
+    without: Without = None,
     prior: Annotated[
         str,
         typer.Option(
@@ -119,7 +121,7 @@ def check(
         thresholds=thresholds,
         every_rival=every_rival,
     )
-    assessment = assess(claim, choose_source(literature, table, os.environ), choices)
+    assessment = assess(claim, choose_source(literature, table, os.environ, without or ()), choices)
     if figure is not None:
         from revinf.reports.robustness_figure import write_robustness_figure
 

@@ -30,6 +30,7 @@ __all__ = [
     "TableFile",
     "ThresholdsFile",
     "Transform",
+    "Without",
     "parsed_columns",
     "parsed_peaks",
     "reproducing_command",
@@ -45,6 +46,16 @@ LiteratureFolder = Annotated[
         show_default=False,
     ),
 ]
+Without = Annotated[
+    list[str] | None,
+    typer.Option(
+        "--without",
+        metavar="STUDY",
+        help="Leave this study out of the literature (id, group or DOI), and the others of its group. Repeatable.",
+        show_default=False,
+    ),
+]
+
 TableFile = Annotated[
     Path | None,
     typer.Option(

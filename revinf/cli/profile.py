@@ -19,6 +19,7 @@ from revinf.cli.options import (
     Space,
     TableFile,
     Transform,
+    Without,
     parsed_peaks,
 )
 
@@ -31,6 +32,7 @@ def profile(
     region: RegionName = None,
     literature: LiteratureFolder = None,
     table: TableFile = None,
+    without: Without = None,
     radius: Radius = 10.0,
     space: Space = None,
     transform: Transform = "pooled",
@@ -59,7 +61,7 @@ def profile(
         transform=transform,
     )
     choices = choices_of(level=level, ratio_prior=ratio_prior, ratio_limit=ratio_prior_limit, kinds=kinds)
-    found = describe(place, choose_source(literature, table, os.environ), choices)
+    found = describe(place, choose_source(literature, table, os.environ, without or ()), choices)
     if figure is not None:
         from revinf.reports.profile_figure import write_profile_figure
 

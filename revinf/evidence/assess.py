@@ -4,8 +4,11 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+import numpy as np
+
 from revinf.base_rates.table import BaseRateTable
 from revinf.evidence.assessment import Assessment
+from revinf.evidence.balance import balanced_against
 from revinf.evidence.breadth import breadth_of
 from revinf.evidence.cautions.registry import cautions_of
 from revinf.evidence.choices import Choices, choices_of
@@ -123,6 +126,11 @@ def assess(claim: Claim, source: Literature | BaseRateTable | Source, choices: C
         ratio_limit=choices.ratio_limit,
     )
     assessment = _contrasted(assessment, claim, asked, answer, settings)
+    if not claim.absent:
+        kin = np.zeros(len(answer.counts.terms), dtype=bool)
+        kin[list(selectivity.kin_positions)] = True
+        balanced = balanced_against(position, answer.counts, answer.studies, words, kin, level=choices.level)
+        assessment = replace(assessment, balanced_ratio=balanced)
     return replace(assessment, cautions=cautions_of(assessment, claim, words, choices.thresholds))
 
 

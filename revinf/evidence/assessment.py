@@ -27,7 +27,7 @@ from revinf.evidence.selectivity import Selectivity
 from revinf.evidence.unevenness import Unevenness
 from revinf.evidence.verdict import verdict
 from revinf.knowledge import VERSION
-from revinf.stats.estimates import Counts
+from revinf.stats.estimates import Counts, Estimate
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -59,6 +59,7 @@ class Assessment:
     context: Context | None = None
     mirror: Mirror | None = None
     pattern: Pattern | None = None
+    balanced_ratio: Estimate | None = None
     own_studies: tuple[str, ...] = ()
     level: float = 0.95
     ratio_prior: str = "shared"
@@ -122,8 +123,7 @@ class Assessment:
             "context": _optional(self.context),
             "mirror": _optional(self.mirror),
             "pattern": _optional(self.pattern),
-            # The comparison in which every process counts once comes with the calibration of a literature.
-            "balanced_ratio": None,
+            "balanced_ratio": _optional(self.balanced_ratio),
             "rivals": [asdict(rival) for rival in chosen.rivals],
             "kin": [asdict(rival) for rival in chosen.kin],
             "robustness": self.robustness.to_dict(),

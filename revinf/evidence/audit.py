@@ -16,7 +16,8 @@ from revinf.evidence.claim import Claim
 from revinf.evidence.claims_table import ClaimsTable, Refusal, Unplaced
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.rewording import Advice, advise
-from revinf.evidence.sources import Source, as_source
+from revinf.evidence.settle import Settlement, settle
+from revinf.evidence.sources import LiteratureSource, Source, as_source
 from revinf.exceptions import InvalidClaimError, RevinfError, UnknownTermError
 from revinf.literature.literature import Literature
 
@@ -43,12 +44,15 @@ class AuditedClaim:
         What its author should do.
     problem : Caution or None
         Why it could not be assessed.
+    settlement : Settlement or None
+        Where else to look; None for a table, and where too few studies could tell.
     """
 
     claim: Claim
     assessment: Assessment | None
     advice: Advice | None
     problem: Caution | None
+    settlement: Settlement | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -153,7 +157,23 @@ def _audited(claim: Claim, source: Source, choices: Choices | None) -> AuditedCl
     except RevinfError as error:
         problem = Caution(code="not-assessed", severity="stop", message=str(error))
         return AuditedClaim(claim=claim, assessment=None, advice=None, problem=problem)
-    return AuditedClaim(claim=claim, assessment=assessment, advice=advise(assessment), problem=None)
+    return AuditedClaim(
+        claim=claim,
+        assessment=assessment,
+        advice=advise(assessment),
+        problem=None,
+        settlement=_settlement(claim, source, choices),
+    )
+
+
+def _settlement(claim: Claim, source: Source, choices: Choices | None) -> Settlement | None:
+    """Return where else to look, if the source can tell."""
+    if not isinstance(source, LiteratureSource) or not claim.peaks or claim.absent:
+        return None
+    try:
+        return settle(claim, source, choices=choices, places=2)
+    except RevinfError:
+        return None
 
 
 def fails_gate(result: Audit, gate: str) -> list[str]:

@@ -45,9 +45,9 @@ class Choices:
 
 def choices_of(
     *,
-    level: float,
-    ratio_prior: str,
-    ratio_limit: float,
+    level: float = 0.95,
+    ratio_prior: str = "shared",
+    ratio_limit: float = 20.0,
     kinds: str | Path | None = None,
     thresholds: str | Path | None = None,
     every_rival: bool = False,

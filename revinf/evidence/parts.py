@@ -101,6 +101,7 @@ class LiteratureFacts:
     provenance: str = ""
     licence: str = ""
     citation: str = ""
+    left_out: int = 0
 
     def to_dict(self) -> dict[str, Any]:
         """Return the source as plain data."""

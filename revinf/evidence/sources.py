@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from functools import reduce
 from pathlib import Path
@@ -20,6 +20,7 @@ from revinf.evidence.place import place_of_mask, place_of_pattern, place_of_peak
 from revinf.exceptions import InvalidClaimError
 from revinf.knowledge import describe_table, table_path
 from revinf.literature.background import Background
+from revinf.literature.leaving_out import leave_out
 from revinf.literature.literature import Literature
 from revinf.spaces.reference import brain_reference
 from revinf.spaces.regions import Mask, load_mask
@@ -101,6 +102,7 @@ class LiteratureSource:
             provenance=description.source,
             licence=description.licence,
             citation=description.citation,
+            left_out=len(self.literature.left_out),
         )
 
     def region_hits(self, region: AskedRegion) -> list[NDArray[np.int64]]:
@@ -234,6 +236,7 @@ def choose_source(
     literature: str | Path | None,
     table: str | Path | None,
     environment: Mapping[str, str],
+    without: Sequence[str] = (),
 ) -> Source:
     """Return the source that the user named, else the environment's, else the shipped open base rates.
 
@@ -243,6 +246,8 @@ def choose_source(
         At most one of a literature folder and a base-rate table.
     environment : mapping
         Environment variables; REVINF_LITERATURE names a literature folder.
+    without : sequence of str
+        Studies, groups or DOIs of a literature that are not counted, with all others of their groups.
 
     Returns
     -------
@@ -252,7 +257,7 @@ def choose_source(
     Raises
     ------
     InvalidClaimError
-        If both a literature and a table are named.
+        If both a literature and a table are named, or studies are to be left out of a table.
     LiteratureError, InputFileError
         If it cannot be read.
 
@@ -263,10 +268,12 @@ def choose_source(
     """
     if literature is not None and table is not None:
         raise InvalidClaimError("counts come from one source; give --literature or --table, not both")
+    folder = literature or (environment.get(ENVIRONMENT) if table is None else None)
+    if folder:
+        return LiteratureSource(leave_out(Literature.open(folder), without))
+    if without:
+        raise InvalidClaimError("a base-rate table does not know its studies; --without needs a literature")
     if table is not None:
         return TableSource(BaseRateTable.read(table))
-    folder = literature or environment.get(ENVIRONMENT)
-    if folder:
-        return LiteratureSource(Literature.open(folder))
     shipped = BaseRateTable.read(table_path("open_base_rates"), name="open base rates")
     return TableSource(shipped, study_is="experiments", shipped=True)

@@ -35,6 +35,8 @@ class Literature(Queries):
     def __init__(self, folder: Path, manifest: Manifest, arrays: Arrays) -> None:
         super().__init__(folder, manifest.description.name, arrays)
         self.manifest = manifest
+        self.left_out: tuple[str, ...] = ()
+        self.own_fingerprint: str | None = None
 
     @classmethod
     def open(cls, folder: str | Path, *, verify: bool = False) -> Literature:
@@ -76,7 +78,7 @@ class Literature(Queries):
     @property
     def fingerprint(self) -> str:
         """Sixteen hexadecimal digits that name the content."""
-        return self.manifest.fingerprint
+        return self.own_fingerprint or self.manifest.fingerprint
 
     @cached_property
     def brain(self) -> BrainReference:

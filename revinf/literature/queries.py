@@ -165,6 +165,15 @@ class Queries:
         """The group of each study; empty where none is known."""
         return self._text("study_group")
 
+    @cached_property
+    def study_dois(self) -> list[str]:
+        """The DOI of each study; empty where none is known."""
+        return self._text("study_doi")
+
+    def arrays(self) -> Arrays:
+        """Return the arrays by name; not to be written to."""
+        return dict(self._arrays)
+
     def studies_carrying_any(self, wanted: NDArray[np.bool_]) -> NDArray[np.bool_]:
         """Return which studies carry at least one of the terms that are flagged.
 

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field
 from functools import cache
 
 from revinf.knowledge import read_table
-from revinf.manuscript.phrases import Found, Phrases, Token
+from revinf.manuscript.phrases import Found, Phrases, Token, tokens
 
 __all__ = ["PlaceMention", "defined_places", "find_places"]
 
@@ -135,7 +135,7 @@ def find_places(text: str, words: list[Token], defined: Mapping[str, str] | None
         if hit is None:
             position += 1
             continue
-        side = _side(words, hit) or (_prefixed(words[hit.first].text) if abbreviated else "")
+        side = _side(words, hit) or (_prefixed(words[hit.first].text, hit.key) if abbreviated else "")
         mentions += _shared_head(text, words, hit, side)
         mentions.append(
             PlaceMention(
@@ -199,9 +199,11 @@ def _side(words: list[Token], hit: Found) -> str:
     return sides[0] if sides else ""
 
 
-def _prefixed(short: str) -> str:
-    """Return the side that the first letter of an abbreviation says: lIFG, RTPJ."""
-    if len(short) > 3 and short[0] in "lrLR" and short[1:].isupper():
+def _prefixed(short: str, place: str) -> str:
+    """Return the side that the first letter of an abbreviation says: lIFG, RTPJ; not LPFC, which is lateral."""
+    rest = tokens(short[1:])
+    known = _abbreviations().at(rest, 0) if rest else None
+    if short[0] in "lrLR" and known is not None and known.key == place:
         return "left" if short[0] in "lL" else "right"
     return ""
 

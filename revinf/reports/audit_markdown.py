@@ -19,6 +19,7 @@ from revinf.reports.facts import (
 )
 from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts
 from revinf.reports.numbers import count, interval, probability, ratio
+from revinf.reports.settle_screen import settling_lines
 from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, active_words, agreement, grade_line
 
 if TYPE_CHECKING:
@@ -148,7 +149,11 @@ def _section(item: AuditedClaim) -> list[str]:
     lines += ["", "What else could it mean?", "", *_rivals(assessment), ""]
     facts = [("rank", rank_words(assessment)), *breadth_facts(assessment), *required_facts(assessment)]
     lines += [f"- {label}: {markdown_cell(text)}" for label, text in [*facts, *contrast_facts(assessment)]]
-    return [*lines, "", "Does the answer hold?", "", *_robustness(assessment)]
+    lines += ["", "Does the answer hold?", "", *_robustness(assessment)]
+    if item.settlement is not None and item.settlement.places:
+        first, *places = settling_lines(item.settlement)
+        lines += ["", f"What would settle it? {markdown_cell(first)}", "", *(f"- {markdown_cell(p)}" for p in places)]
+    return lines
 
 
 def _rivals(assessment: Assessment) -> list[str]:

@@ -86,6 +86,8 @@ def _opening(assessment: Assessment) -> list[Any]:
         studies += f" (here: {facts.study_is})"
     peaks = f", {count(facts.n_peaks)} peaks" if facts.n_peaks is not None else ""
     rows.append(("Counted in", f"{facts.name}: {studies}{peaks}, {count(facts.n_terms)} terms"))
+    if facts.left_out:
+        rows.append(("", f"without {count(facts.left_out)} that were to be left out, with their groups"))
     if facts.invented:
         rows.append(("", "INVENTED DATA: these numbers say nothing about any brain"))
     return [hanging(rows)]

@@ -35,6 +35,10 @@ def summary_sentence(assessment: Assessment) -> str:
     )
 
 
+_WORTH_BITS = 0.02
+"""Lower end of the expected gain below which a further look is not worth asking for."""
+
+
 def author_note(item: AuditedClaim) -> str:
     """Return what the author should change, and why."""
     if item.assessment is None or item.advice is None:
@@ -57,7 +61,24 @@ def reviewer_comment(item: AuditedClaim) -> str:
     facts = assessment.literature
     source = f"In {facts.name} ({count(facts.n_studies)} {facts.study_is}), {summary_sentence(assessment)}"
     invented = " (These base rates are INVENTED for demonstration.)" if facts.invented else ""
-    return f"{opening} {source}{invented} {_verdict(assessment)} {_request(assessment)}"
+    return f"{opening} {source}{invented} {_verdict(assessment)} {_request(assessment)}{_look(item)}"
+
+
+def _look(item: AuditedClaim) -> str:
+    """Say where else in the same map the authors could look."""
+    found = item.settlement
+    if found is None or not found.places or found.places[0].gain.low < _WORTH_BITS:
+        return ""
+    place = found.places[0]
+    terms = [candidate.term for candidate in found.candidates]
+    active = terms[max(range(len(terms)), key=lambda at: place.if_active[at])]
+    silent = terms[max(range(len(terms)), key=lambda at: place.if_silent[at])]
+    if item.claim.term not in (active, silent) or active == silent:
+        return ""  # it would decide between others
+    return (
+        f" It would also help to know whether {coordinates(place.peak)} is active in the same map: in this literature "
+        f"activity there would favour {active}, its absence {silent}."
+    )
 
 
 def _verdict(assessment: Assessment) -> str:

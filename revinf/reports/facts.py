@@ -103,6 +103,8 @@ def contrast_facts(assessment: Assessment) -> list[tuple[str, str]]:
                 f"{count(counts.term_total)} against {count(counts.other_active)} of {count(counts.other_total)}",
             )
         )
+    if assessment.balanced_ratio is not None:
+        rows.append(("balanced", f"{interval(assessment.balanced_ratio, ratio)} where every other process counts once"))
     mirror, pattern = assessment.mirror, assessment.pattern
     if mirror is not None and mirror.ratio is not None:
         rows.append(("mirror", f"{interval(mirror.ratio, ratio)} at the same place of the other hemisphere"))

@@ -19,6 +19,7 @@ from revinf.reports.facts import (
 )
 from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts
 from revinf.reports.numbers import count, interval, percent, probability, ratio
+from revinf.reports.settle_screen import settling_lines
 from revinf.reports.wording import LIMITS, NO_INDIVIDUALS, active_words, agreement, grade_line
 
 if TYPE_CHECKING:
@@ -143,6 +144,7 @@ def _claim(number: int, item: AuditedClaim) -> dict[str, Any]:
             }
             for caution in assessment.cautions
         ],
+        "settling": [] if item.settlement is None else settling_lines(item.settlement),
         "n_stop": severities.count("stop"),
         "n_weigh": severities.count("weigh"),
     }

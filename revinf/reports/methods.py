@@ -86,6 +86,8 @@ def source_facts(audit: Audit) -> list[tuple[str, str]]:
         rows.append(("to be cited as", facts.citation))
     rows.append(("licence", facts.licence or "not stated by who built it"))
     rows.append(("fingerprint", facts.fingerprint))
+    if facts.left_out:
+        rows.append(("left out", f"{agreement(facts.left_out, 'study', 'studies')}, as asked, with their groups"))
     if facts.negative_peaks:
         rows.append(("decreases", f"{count(facts.negative_peaks)} peaks are decreases and are counted as activity"))
     return rows

@@ -17,6 +17,7 @@ from revinf.evidence.cautions.rivals import rival_ahead, rivals_tied
 from revinf.evidence.cautions.source import mixed_direction, own_study_counted, uneven_literature
 from revinf.evidence.cautions.term import term_unlabelled
 from revinf.evidence.cautions.thresholds import Thresholds
+from revinf.evidence.unevenness import Unevenness
 from revinf.stats.estimates import Counts, Estimate
 
 LIMITS = Thresholds()
@@ -152,14 +153,27 @@ def test_absence_unsearched_where_the_claim_rests_on_no_activity():
     assert absence_unsearched(False) is None
 
 
+def uneven(term: str, share: float, effective: float, n: int) -> Unevenness:
+    return Unevenness(
+        largest_term=term, largest_share=share, effective_processes=effective, n_processes=n, decrease_terms=()
+    )
+
+
+def test_uneven_literature_says_where_counting_every_process_once_reverses_the_ratio():
+    held = uneven_literature(uneven("memory", 0.6, 4.0, 8), LIMITS, observed=1.25, balanced=Estimate(0.92, 0.5, 1.5))
+    assert "1.25, but 0.92" in held.message
+    same = uneven_literature(uneven("memory", 0.6, 4.0, 8), LIMITS, observed=1.25, balanced=Estimate(1.92, 0.5, 2.5))
+    assert "Here it matters" not in same.message
+
+
 @pytest.mark.parametrize(
     ("share", "effective", "n", "held"),
     [(0.41, 8.0, 8, True), (0.4, 4.0, 8, False), (0.4, 3.9, 8, True), (1.0, 1.0, 1, False)],
 )
 def test_uneven_literature_where_a_few_processes_dominate(share, effective, n, held):
-    found = seen(uneven_literature("memory", share, effective, n, LIMITS))
+    found = seen(uneven_literature(uneven("memory", share, effective, n), LIMITS))
     assert found == (("uneven-literature", "weigh") if held else None)
-    assert uneven_literature("memory", 0.1, 8.0, 8, LIMITS) is None
+    assert uneven_literature(uneven("memory", 0.1, 8.0, 8), LIMITS) is None
 
 
 @pytest.mark.parametrize(("peaks", "terms"), [(1, ()), (0, ("task-induced deactivation",))])

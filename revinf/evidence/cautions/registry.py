@@ -182,11 +182,7 @@ def _of_source(assessment: Assessment, limits: Thresholds) -> Iterator[Caution |
     yield invented_data(facts.invented)
     yield small_default(facts.kind == "shipped table", facts.n_studies, uneven.largest_share)
     yield uneven_literature(
-        uneven.largest_term,
-        uneven.largest_share,
-        uneven.effective_processes,
-        uneven.n_processes,
-        limits,
+        uneven, limits, observed=assessment.likelihood_ratio.observed, balanced=assessment.balanced_ratio
     )
     yield ungrouped_studies(facts.merged, facts.study_is)
     yield mixed_direction(facts.negative_peaks, uneven.decrease_terms)

@@ -6,6 +6,8 @@ from collections.abc import Sequence
 
 from revinf.evidence.cautions.caution import Caution
 from revinf.evidence.cautions.thresholds import Thresholds
+from revinf.evidence.unevenness import Unevenness
+from revinf.stats.estimates import Estimate
 
 __all__ = [
     "invented_data",
@@ -61,24 +63,42 @@ def small_default(shipped: bool, n_studies: int, largest_share: float) -> Cautio
 
 
 def uneven_literature(
-    largest_term: str, largest_share: float, effective: float, n_processes: int, limits: Thresholds
+    uneven: Unevenness,
+    limits: Thresholds,
+    *,
+    observed: float | None = None,
+    balanced: Estimate | None = None,
 ) -> Caution | None:
-    """Warn where a few processes dominate the literature, and with them every base rate."""
+    """Warn where a few processes dominate the literature, and with them every base rate.
+
+    Where the ratio lies on the other side of 1 once every other process counts once, it says so.
+    """
+    largest_term, largest_share = uneven.largest_term, uneven.largest_share
+    effective, n_processes = uneven.effective_processes, uneven.n_processes
     dominated = largest_share > limits.uneven_share
     if n_processes < 2 or not (dominated or effective < limits.uneven_effective * n_processes):
         return None
+    reversal = ""
+    if observed is not None and balanced is not None and (observed - 1) * (balanced.estimate - 1) < 0:
+        reversal = (
+            f" Here it matters: the observed ratio is {observed:.2f}, but {balanced.estimate:.2f} where every other "
+            "process counts once."
+        )
     return Caution(
         code="uneven-literature",
         severity="weigh",
         message=(
             f"This literature is uneven: {largest_term!r} labels {largest_share:.0%} of the studies, and its "
             f"{n_processes} processes count as {effective:.1f}; base rates and 'the others' inherit that."
+            f"{reversal}"
         ),
         evidence={
             "largest_term": largest_term,
             "largest_share": largest_share,
             "effective_processes": effective,
             "n_processes": n_processes,
+            "observed_ratio": observed,
+            "balanced_ratio": None if balanced is None else balanced.estimate,
         },
     )
 

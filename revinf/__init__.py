@@ -19,6 +19,8 @@ from revinf.knowledge import VERSION as __version__
 
 if TYPE_CHECKING:
     from revinf.base_rates.table import BaseRateTable
+    from revinf.calibration.calibrate import calibrate
+    from revinf.calibration.summaries import Calibration
     from revinf.evidence.asked_region import AskedRegion
     from revinf.evidence.assess import assess
     from revinf.evidence.assessment import Assessment
@@ -28,9 +30,12 @@ if TYPE_CHECKING:
     from revinf.evidence.claims_table import claims_from_frame, read_claims
     from revinf.evidence.map_peaks import map_peaks
     from revinf.evidence.profile import Profile, profile
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.settle import settle
+    from revinf.evidence.settlement import Settlement
+    from revinf.evidence.source_choice import choose_source
     from revinf.literature.building import build_literature
     from revinf.literature.import_options import ImportOptions
+    from revinf.literature.leaving_out import leave_out
     from revinf.literature.literature import Literature
     from revinf.literature.manifest import Description
     from revinf.manuscript.found import Scan
@@ -44,6 +49,7 @@ __all__ = [
     "Assessment",
     "Audit",
     "BaseRateTable",
+    "Calibration",
     "Choices",
     "Claim",
     "Description",
@@ -51,27 +57,36 @@ __all__ = [
     "Literature",
     "Profile",
     "Scan",
+    "Settlement",
     "__version__",
     "assess",
     "audit",
     "build_literature",
+    "calibrate",
     "choose_source",
     "claims_from_frame",
+    "leave_out",
     "map_peaks",
     "profile",
     "read_claims",
     "read_document",
     "scan",
+    "settle",
     "write_audit_folder",
     "write_html",
 ]
 
 _HOMES = {
+    "Calibration": "revinf.calibration.summaries",
+    "Settlement": "revinf.evidence.settlement",
+    "calibrate": "revinf.calibration.calibrate",
+    "leave_out": "revinf.literature.leaving_out",
+    "settle": "revinf.evidence.settle",
     "AskedRegion": "revinf.evidence.asked_region",
     "Audit": "revinf.evidence.audit",
     "Profile": "revinf.evidence.profile",
     "audit": "revinf.evidence.audit",
-    "choose_source": "revinf.evidence.sources",
+    "choose_source": "revinf.evidence.source_choice",
     "claims_from_frame": "revinf.evidence.claims_table",
     "profile": "revinf.evidence.profile",
     "Scan": "revinf.manuscript.found",

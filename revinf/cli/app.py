@@ -9,6 +9,7 @@ import typer
 
 from revinf.cli.audit import audit
 from revinf.cli.build import build
+from revinf.cli.calibrate import calibrate
 from revinf.cli.check import check
 from revinf.cli.demo import demo
 from revinf.cli.inspect import inspect
@@ -57,6 +58,7 @@ app.command(cls=PeakCommand)(settle)
 app.command()(scan)
 app.command()(peaks)
 app.command()(audit)
+app.command()(calibrate)
 app.command()(build)
 app.command()(inspect)
 app.command()(terms)

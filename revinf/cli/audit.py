@@ -81,7 +81,7 @@ def audit(
     from revinf.evidence.audit import checked_readers, fails_gate
     from revinf.evidence.choices import choices_of
     from revinf.evidence.claims_table import read_claims
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
     from revinf.reports.audit_folder import write_audit_folder
     from revinf.reports.audit_screen import audit_screen
     from revinf.reports.progress import counting

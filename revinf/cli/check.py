@@ -97,7 +97,7 @@ def check(
     from revinf.evidence.assess import assess
     from revinf.evidence.choices import choices_of
     from revinf.evidence.claim import Claim, parsed_prior
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
 
     claim = Claim(
         term=term,

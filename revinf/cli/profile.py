@@ -50,7 +50,7 @@ def profile(
     from revinf.evidence.asked_region import AskedRegion
     from revinf.evidence.choices import choices_of
     from revinf.evidence.profile import profile as describe
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
 
     place = AskedRegion(
         peaks=parsed_peaks(peak),

@@ -46,7 +46,7 @@ def scan(
 
     Example: revinf scan manuscript.docx --out claims.csv
     """
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
     from revinf.evidence.term_list import list_terms
     from revinf.manuscript.peaks_labels import read_labelled_peaks
     from revinf.manuscript.reading import read_document

@@ -51,7 +51,7 @@ def settle(
     from revinf.evidence.choices import choices_of
     from revinf.evidence.claim import Claim
     from revinf.evidence.settle import settle as find
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
 
     claim = Claim(term=term, peaks=parsed_peaks(peak), radius_mm=radius, space=space, transform=transform)
     source = choose_source(literature, None, os.environ, without or ())

@@ -26,7 +26,7 @@ def terms(
 
     Example: revinf terms memory
     """
-    from revinf.evidence.sources import choose_source
+    from revinf.evidence.source_choice import choose_source
     from revinf.evidence.term_list import list_terms
     from revinf.evidence.vocabulary import chosen_vocabulary
 

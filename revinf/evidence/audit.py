@@ -16,7 +16,8 @@ from revinf.evidence.claim import Claim
 from revinf.evidence.claims_table import ClaimsTable, Refusal, Unplaced
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.rewording import Advice, advise
-from revinf.evidence.settle import Settlement, settle
+from revinf.evidence.settle import settle
+from revinf.evidence.settlement import Settlement
 from revinf.evidence.sources import LiteratureSource, Source, as_source
 from revinf.exceptions import InvalidClaimError, RevinfError, UnknownTermError
 from revinf.literature.literature import Literature

@@ -68,13 +68,18 @@ class PatternRegion:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Pattern:
-    """Formula 12: the places together, and what multiplying them as if independent would claim."""
+    """Formula 12: the places together, and what multiplying them as if independent would claim.
+
+    `discounted` is the product raised to the exponent that a calibration of the literature gave.
+    """
 
     regions: tuple[PatternRegion, ...]
     joint: Estimate | None
     joint_hits: int
     product: float
     overstatement: float | None
+    discount: float | None = None
+    discounted: float | None = None
 
 
 def reporting_volume(term: str, studies: StudyLevel, counts: Counts, settings: RatioSettings) -> ReportingVolume:
@@ -202,6 +207,8 @@ def pattern_of(
     if joint is not None:
         # How much further from 1 than the joint estimate, on its side of 1.
         overstatement = product / joint.estimate if product >= 1 else joint.estimate / product
+    kept = source.literature.discount
+    discount = kept[0] if kept is not None and kept[1] == claim.radius_mm and not claim.absent else None
     return Pattern(
         regions=tuple(
             PatternRegion(peak=peak, counts=table, ratio=ratio)
@@ -211,4 +218,6 @@ def pattern_of(
         joint_hits=joint_hits,
         product=product,
         overstatement=overstatement,
+        discount=discount,
+        discounted=None if discount is None else product**discount,
     )

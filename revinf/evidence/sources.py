@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from functools import reduce
 from pathlib import Path
@@ -18,18 +17,14 @@ from revinf.evidence.asked_region import DEFAULT_RADIUS_MM, AskedRegion
 from revinf.evidence.parts import LiteratureFacts, Place, TablePlace
 from revinf.evidence.place import place_of_mask, place_of_pattern, place_of_peak
 from revinf.exceptions import InvalidClaimError
-from revinf.knowledge import describe_table, table_path
+from revinf.knowledge import describe_table
 from revinf.literature.background import Background
-from revinf.literature.leaving_out import leave_out
 from revinf.literature.literature import Literature
 from revinf.spaces.reference import brain_reference
 from revinf.spaces.regions import Mask, load_mask
 from revinf.spaces.spheres import Sphere
 
-__all__ = ["ENVIRONMENT", "Answer", "LiteratureSource", "Source", "TableSource", "as_source", "choose_source"]
-
-ENVIRONMENT = "REVINF_LITERATURE"
-"""Environment variable that names the literature to use where none is given."""
+__all__ = ["Answer", "LiteratureSource", "Source", "TableSource", "as_source"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -230,50 +225,3 @@ def as_source(source: Literature | BaseRateTable | Source) -> Source:
     if isinstance(source, Literature):
         return LiteratureSource(source)
     return TableSource(source) if isinstance(source, BaseRateTable) else source
-
-
-def choose_source(
-    literature: str | Path | None,
-    table: str | Path | None,
-    environment: Mapping[str, str],
-    without: Sequence[str] = (),
-) -> Source:
-    """Return the source that the user named, else the environment's, else the shipped open base rates.
-
-    Parameters
-    ----------
-    literature, table : path, optional
-        At most one of a literature folder and a base-rate table.
-    environment : mapping
-        Environment variables; REVINF_LITERATURE names a literature folder.
-    without : sequence of str
-        Studies, groups or DOIs of a literature that are not counted, with all others of their groups.
-
-    Returns
-    -------
-    Source
-        Opened.
-
-    Raises
-    ------
-    InvalidClaimError
-        If both a literature and a table are named, or studies are to be left out of a table.
-    LiteratureError, InputFileError
-        If it cannot be read.
-
-    Examples
-    --------
-    >>> choose_source(None, None, {}).facts.name
-    'open base rates'
-    """
-    if literature is not None and table is not None:
-        raise InvalidClaimError("counts come from one source; give --literature or --table, not both")
-    folder = literature or (environment.get(ENVIRONMENT) if table is None else None)
-    if folder:
-        return LiteratureSource(leave_out(Literature.open(folder), without))
-    if without:
-        raise InvalidClaimError("a base-rate table does not know its studies; --without needs a literature")
-    if table is not None:
-        return TableSource(BaseRateTable.read(table))
-    shipped = BaseRateTable.read(table_path("open_base_rates"), name="open base rates")
-    return TableSource(shipped, study_is="experiments", shipped=True)

@@ -60,7 +60,7 @@ def list_terms(source: Source, query: str = "", vocabulary: Vocabulary | None = 
 
     Examples
     --------
-    >>> from revinf.evidence.sources import choose_source
+    >>> from revinf.evidence.source_choice import choose_source
     >>> [row.term for row in list_terms(choose_source(None, None, {}), "mentalising").rows]
     ['theory of mind']
     """

@@ -8,6 +8,7 @@ from typing import Any
 
 import numpy as np
 
+from revinf.literature.kept_calibration import kept_discount
 from revinf.literature.manifest import Description, Manifest
 from revinf.literature.packing import Arrays
 from revinf.literature.queries import Queries
@@ -79,6 +80,11 @@ class Literature(Queries):
     def fingerprint(self) -> str:
         """Sixteen hexadecimal digits that name the content."""
         return self.own_fingerprint or self.manifest.fingerprint
+
+    @cached_property
+    def discount(self) -> tuple[float, float] | None:
+        """Exponent and radius (mm) that a calibration left with it; see `revinf.calibration`."""
+        return kept_discount(self.folder, self.manifest.fingerprint)
 
     @cached_property
     def brain(self) -> BrainReference:

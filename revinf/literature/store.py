@@ -22,6 +22,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from revinf.exceptions import InputFileError, LiteratureError
+from revinf.literature.kept_calibration import FILE as CALIBRATION
 from revinf.literature.manifest import MANIFEST, ArrayEntry, Manifest, read_manifest
 from revinf.literature.packing import ARRAY_TYPES, Arrays
 
@@ -124,7 +125,7 @@ def _is_literature(folder: Path) -> bool:
     if not folder.is_dir():
         return False
     names = {entry.name for entry in folder.iterdir()}
-    if not names <= {MANIFEST, *(f"{name}.npy" for name in ARRAY_TYPES)}:
+    if not names <= {MANIFEST, CALIBRATION, *(f"{name}.npy" for name in ARRAY_TYPES)}:
         return False
     return names != {MANIFEST} or _states_our_format(folder / MANIFEST)
 

@@ -118,6 +118,12 @@ def contrast_facts(assessment: Assessment) -> list[tuple[str, str]]:
         ]
         overstated = "" if pattern.overstatement is None else f", {pattern.overstatement:.1f} times the joint one"
         rows.append(("multiplied", f"{ratio(pattern.product)} if the places were independent{overstated}"))
+        if pattern.discounted is not None and pattern.discount is not None:
+            words = (
+                f"{ratio(pattern.discounted)}, the product to the power {pattern.discount:.2f} of the calibration "
+                "(fitted on all peaks of a study)"
+            )
+            rows.append(("discounted", words))
     return rows
 
 

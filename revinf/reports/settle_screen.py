@@ -10,7 +10,7 @@ from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import NO_INDIVIDUALS
 
 if TYPE_CHECKING:
-    from revinf.evidence.settle import Settlement, SettlingPlace
+    from revinf.evidence.settlement import Settlement, SettlingPlace
 
 __all__ = ["bits", "outcome_words", "place_line", "settle_screen", "settling_lines"]
 

@@ -221,7 +221,7 @@ def test_flipped_byte_is_found_by_verify(damaged, revinf):
     [
         ("revinf.literature.literature.Literature.open", ("check", "--literature", "x", *HERE)),
         ("revinf.literature.literature.Literature.open", ("inspect", "x")),
-        ("revinf.evidence.sources.choose_source", ("terms",)),
+        ("revinf.evidence.source_choice.choose_source", ("terms",)),
         ("revinf.evidence.demonstration.write_demonstration", ("demo", "--out", "x")),
     ],
 )
@@ -256,5 +256,5 @@ def test_lack_of_memory_is_told_in_one_line(revinf, monkeypatch):
     def exhaust(*_args, **_options):
         raise MemoryError
 
-    monkeypatch.setattr("revinf.evidence.sources.choose_source", exhaust)
+    monkeypatch.setattr("revinf.evidence.source_choice.choose_source", exhaust)
     assert_one_line(revinf("terms"), "there is not enough memory for this")

@@ -10,7 +10,7 @@ import pytest
 
 from revinf.evidence.assess import Choices, assess
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.knowledge import VERSION
 
 E = {"estimate": 0, "low": 0, "high": 0}

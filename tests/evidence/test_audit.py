@@ -9,7 +9,8 @@ from revinf.evidence.audit import Audit, audit, audit_of, checked_readers, fails
 from revinf.evidence.cautions.caution import Caution
 from revinf.evidence.claim import Claim
 from revinf.evidence.rewording import advise
-from revinf.evidence.sources import Source, choose_source
+from revinf.evidence.source_choice import choose_source
+from revinf.evidence.sources import Source
 from revinf.exceptions import InvalidClaimError
 
 FOR = Claim(id="for", term="semantic cognition", peaks=[(-54, 24, 12)])

@@ -14,7 +14,8 @@ from revinf.evidence.cautions import registry
 from revinf.evidence.cautions.caution import Caution
 from revinf.evidence.cautions.thresholds import Thresholds
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import LiteratureSource, TableSource, choose_source
+from revinf.evidence.source_choice import choose_source
+from revinf.evidence.sources import LiteratureSource, TableSource
 from revinf.spaces.brain import brain_reference, distance_outside_mm, tissue_at
 
 SOLID = (15, 48, 17, 371)  # decided, and its interval spans less than a factor of four

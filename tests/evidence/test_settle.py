@@ -8,7 +8,8 @@ import numpy as np
 import pytest
 
 from revinf.evidence.claim import Claim
-from revinf.evidence.settle import FEWEST, Settlement, settle
+from revinf.evidence.settle import FEWEST, settle
+from revinf.evidence.settlement import Settlement
 from revinf.exceptions import InvalidClaimError, UnknownTermError
 from revinf.literature.literature import Literature
 from revinf.spaces.spheres import sphere

@@ -12,7 +12,8 @@ from revinf.base_rates.table_rows import write_table
 from revinf.base_rates.tabulate import tabulate
 from revinf.evidence.assess import assess
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import ENVIRONMENT, LiteratureSource, TableSource, choose_source
+from revinf.evidence.source_choice import ENVIRONMENT, choose_source
+from revinf.evidence.sources import LiteratureSource, TableSource
 from revinf.evidence.term_list import list_terms
 from revinf.exceptions import InputFileError, InvalidClaimError, LiteratureError, SpaceError
 from revinf.spaces.spheres import sphere

@@ -11,7 +11,7 @@ import pytest
 
 from revinf.evidence.audit import Audit, audit
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.reports.audit_markdown import audit_markdown, author_markdown, reviewer_markdown
 from revinf.reports.audit_screen import audit_screen
 from revinf.reports.audit_tables import COLUMNS, audit_csv, audit_jsonl, audit_rows

@@ -9,7 +9,7 @@ from revinf.base_rates.table_rows import TableRow
 from revinf.evidence.assess import Choices, assess
 from revinf.evidence.claim import Claim
 from revinf.evidence.grading import grade_words
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.knowledge import table_path
 from revinf.reports.check_screen import check_screen
 from revinf.reports.numbers import coordinates, count, interval, probability, ratio

@@ -17,7 +17,8 @@ from revinf.evidence.assess import assess
 from revinf.evidence.choices import Choices
 from revinf.evidence.claim import Claim
 from revinf.evidence.profile import profile
-from revinf.evidence.sources import as_source, choose_source
+from revinf.evidence.source_choice import choose_source
+from revinf.evidence.sources import as_source
 from revinf.exceptions import InputFileError
 from revinf.knowledge import table_path
 from revinf.reports.figures import new_figure, write_figure

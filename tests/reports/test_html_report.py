@@ -12,7 +12,7 @@ import pytest
 from revinf.evidence.audit import Audit, audit, audit_of
 from revinf.evidence.choices import Choices
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.exceptions import InputFileError
 from revinf.reports.html_report import html_text, write_html
 from revinf.reports.methods import METHODS_SOURCES, methods_paragraph, source_facts

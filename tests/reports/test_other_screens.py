@@ -7,7 +7,7 @@ from pathlib import Path
 
 import pytest
 
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.evidence.term_list import list_terms
 from revinf.reports.demo_screen import demo_screen
 from revinf.reports.literature_screens import inspect_screen, tabulate_line, terms_screen

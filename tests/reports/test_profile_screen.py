@@ -8,7 +8,8 @@ from revinf.base_rates.table import BaseRateTable
 from revinf.evidence.asked_region import AskedRegion
 from revinf.evidence.choices import Choices
 from revinf.evidence.profile import profile
-from revinf.evidence.sources import TableSource, as_source, choose_source
+from revinf.evidence.source_choice import choose_source
+from revinf.evidence.sources import TableSource, as_source
 from revinf.knowledge import table_path
 from revinf.reports.numbers import interval, p_value, place_share, probability, ratio
 from revinf.reports.profile_screen import profile_screen

@@ -6,7 +6,7 @@ import pytest
 
 from revinf.evidence.assess import assess
 from revinf.evidence.claim import Claim
-from revinf.evidence.sources import choose_source
+from revinf.evidence.source_choice import choose_source
 from revinf.reports.check_screen import check_screen
 from revinf.reports.numbers import coordinates, interval, place_share, probability, ratio
 from revinf.reports.terminal import fitting

@@ -1,0 +1,1 @@
+"""How far a literature can be trusted, measured on studies that were not counted."""

@@ -14,6 +14,7 @@ from revinf.evidence.cautions.term import term_unlabelled
 from revinf.evidence.choices import Choices
 from revinf.evidence.claim import Claim
 from revinf.evidence.claims_table import ClaimsTable, Refusal, Unplaced
+from revinf.evidence.own_paper import OwnPaper, own_papers
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.rewording import Advice, advise
 from revinf.evidence.settle import settle
@@ -64,6 +65,7 @@ class Audit:
     audited: tuple[AuditedClaim, ...]
     unplaced: tuple[Unplaced, ...] = ()
     refused: tuple[Refusal, ...] = ()
+    own_papers: tuple[OwnPaper, ...] = ()
 
     @property
     def assessments(self) -> list[Assessment]:
@@ -145,6 +147,7 @@ def audit(
         audited=tuple(audited),
         unplaced=table.unplaced if table is not None else (),
         refused=table.refused if table is not None else (),
+        own_papers=own_papers(listed, asked),
     )
 
 

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from revinf.knowledge import VERSION
 from revinf.reports.cells import markdown_cell
-from revinf.reports.comments import author_note, place_words, reviewer_comment, summary_sentence
+from revinf.reports.comments import author_note, own_paper_words, place_words, reviewer_comment, summary_sentence
 from revinf.reports.facts import (
     breadth_facts,
     contrast_facts,
@@ -95,6 +95,7 @@ def _source(audit: Audit) -> list[str]:
     n_left = len(audit.refused) + len(audit.unplaced)
     if n_left:
         lines += ["", f"{agreement(n_left, 'row')} of the table could not be assessed; see the end."]
+    lines += [text for words in own_paper_words(audit) for text in ("", f"**{markdown_cell(words)}**")]
     if facts.invented:
         lines += ["", "**INVENTED DATA: these numbers say nothing about any brain.**"]
     return lines

@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 from revinf.reports.cells import one_line
+from revinf.reports.comments import own_paper_words
 from revinf.reports.numbers import interval, probability, ratio
 from revinf.reports.terminal import fitting, hanging, heading, plain_table
 from revinf.reports.wording import NO_INDIVIDUALS, agreement
@@ -41,6 +42,7 @@ def audit_screen(audit: Audit, where: str, names: list[str], *, width: int = 104
     rows = [("Counted in", counted)]
     if facts.invented:
         rows.append(("", "INVENTED DATA: these numbers say nothing about any brain"))
+    rows += [("■ stop", one_line(words)) for words in own_paper_words(audit)]
     rows += [("Written", f"{where}: {', '.join(names)}")]
     header = ["claim", "likelihood ratio", "direction", "posterior", "advice", "cautions"]
     listed = [_row(item) for item in audit.by_attention()]

@@ -8,9 +8,9 @@ from revinf.reports.numbers import coordinates, count, interval, probability, ra
 
 if TYPE_CHECKING:
     from revinf.evidence.assessment import Assessment
-    from revinf.evidence.audit import AuditedClaim
+    from revinf.evidence.audit import Audit, AuditedClaim
 
-__all__ = ["author_note", "place_words", "reviewer_comment", "summary_sentence"]
+__all__ = ["author_note", "own_paper_words", "place_words", "reviewer_comment", "summary_sentence"]
 
 
 def place_words(item: AuditedClaim) -> str:
@@ -21,6 +21,15 @@ def place_words(item: AuditedClaim) -> str:
         label = f"{claim.label}, " if claim.label else ""
         return f"{label}{points} {claim.space}, within {claim.radius_mm:g} mm"
     return str(claim.region) if claim.region is not None else f"mask {claim.mask}"
+
+
+def own_paper_words(audit: Audit) -> list[str]:
+    """Say which counted studies report the coordinates of an audit, and what to do about it."""
+    return [
+        f"{own.n_shared} of the {own.n_asked} coordinates are those of the counted study {own.study!r}: is it the paper "
+        f"itself? Then ask again with --without {own.study}, since a study must not be evidence for its own claims."
+        for own in audit.own_papers
+    ]
 
 
 def summary_sentence(assessment: Assessment) -> str:

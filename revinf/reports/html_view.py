@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Any
 
 from revinf.knowledge import VERSION
 from revinf.reports.cells import one_line
-from revinf.reports.comments import place_words
+from revinf.reports.comments import own_paper_words, place_words
 from revinf.reports.drawings import brain_marks, brain_views, curve, ratio_marks
 from revinf.reports.facts import (
     breadth_facts,
@@ -61,6 +61,7 @@ def report_view(audit: Audit, *, command: str = "", title: str = "") -> dict[str
         "asked": f"{agreement(len(claims), 'claim')} about {agreement(terms, 'process', 'processes')}",
         "summary": [(word, advice.count(word)) for word in _ORDER if word in advice],
         "invented": audit.source.invented,
+        "own_papers": [one_line(words) for words in own_paper_words(audit)],
         "source": [(label, one_line(text)) for label, text in source_facts(audit)],
         "source_name": one_line(audit.source.name),
         "claims": claims,

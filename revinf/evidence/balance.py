@@ -7,7 +7,6 @@ from numpy.typing import NDArray
 
 from revinf.base_rates.counting import TermCounts
 from revinf.base_rates.study_level import StudyLevel
-from revinf.evidence.kin import kin_of
 from revinf.evidence.vocabulary import Vocabulary
 from revinf.stats.balanced import balanced_ratio
 from revinf.stats.estimates import Estimate
@@ -82,11 +81,17 @@ def counted_once(counts: TermCounts, studies: StudyLevel, words: Vocabulary) -> 
         if counts.term_total[position] and words.counts_as_process(term)
     ]
     waiting.sort(key=lambda position: (-int(counts.term_total[position]), counts.terms[position]))
+    kin: dict[int, list[int]] = {}
+    for first, second in studies.literature.kin_pairs().tolist():
+        kin.setdefault(first, []).append(second)
+        kin.setdefault(second, []).append(first)
+    at = {term: position for position, term in enumerate(counts.terms)}
     kept: list[int] = []
-    taken = np.zeros(len(counts.terms), dtype=bool)
+    taken: set[int] = set()
     for position in waiting:
-        if taken[position]:
+        if position in taken:
             continue
         kept.append(position)
-        taken |= kin_of(position, counts, studies.shared_with(counts.terms[position]), words)
+        taken.update(kin.get(position, ()))
+        taken.update(at[name] for name in words.names_of(counts.terms[position]) if name in at)
     return kept

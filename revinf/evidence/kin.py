@@ -8,14 +8,9 @@ from numpy.typing import NDArray
 from revinf.base_rates.counting import TermCounts
 from revinf.base_rates.study_level import SharedCounts
 from revinf.evidence.vocabulary import Vocabulary
+from revinf.literature.kin_pairs import KIN_LIFT, KIN_SHARE
 
 __all__ = ["KIN_LIFT", "KIN_SHARE", "kin_of"]
-
-KIN_SHARE = 0.5
-"""Share of the smaller term's studies that the two must share ..."""
-
-KIN_LIFT = 1.5
-"""... and how many times more they must share than chance would have them share."""
 
 
 def kin_of(claimed: int, counts: TermCounts, shared: SharedCounts | None, words: Vocabulary) -> NDArray[np.bool_]:

@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 
 from revinf.exceptions import LiteratureError
 from revinf.literature.background import BACKGROUND_RADIUS_MM, compute_background
+from revinf.literature.kin_pairs import find_kin_pairs
 from revinf.literature.literature import Literature
 from revinf.literature.manifest import Manifest
 from revinf.literature.packing import Arrays, pack_text, unpack_text
@@ -130,6 +131,9 @@ def _without(arrays: Arrays, gone: NDArray[np.bool_]) -> Arrays:
         BACKGROUND_RADIUS_MM,
     )
     smaller["grid_hits"] = np.asarray(arrays["grid_hits"] - lost.location_hits)
+    smaller["kin_pairs"] = find_kin_pairs(
+        smaller["study_term_starts"], smaller["study_terms"], smaller["term_study_starts"], smaller["term_studies"]
+    )
     for name in ("study_id", "study_group", "study_doi"):
         items = unpack_text(np.asarray(arrays[f"{name}_text"]), np.asarray(arrays[f"{name}_ends"]))
         left = [item for item, keep in zip(items, kept.tolist(), strict=True) if keep]

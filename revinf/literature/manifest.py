@@ -12,7 +12,7 @@ from revinf.exceptions import LiteratureError
 
 __all__ = ["FORMAT", "MANIFEST", "ArrayEntry", "Description", "Manifest", "read_manifest"]
 
-FORMAT = "revinf/literature/1"
+FORMAT = "revinf/literature/2"
 MANIFEST = "literature.json"
 _MANIFEST_LIMIT = 16_000_000
 """Bytes; one of ours is a few kilobytes."""
@@ -71,7 +71,7 @@ class Manifest:
         content = "\n".join(
             f"{name} {entry.sha256}"
             for name, entry in sorted(self.arrays.items())
-            if not name.startswith(("brain_", "point_", "grid_"))
+            if not name.startswith(("brain_", "point_", "grid_", "kin_"))
         )
         return hashlib.sha256(f"{FORMAT}\n{content}".encode()).hexdigest()[:16]
 

@@ -15,6 +15,7 @@ from numpy.typing import NDArray
 from revinf.literature.background import BACKGROUND_RADIUS_MM, SPACING_TENTHS, compute_background
 from revinf.literature.cells import CELL_SHAPE, cell_numbers, cell_starts
 from revinf.literature.importing import ImportedStudies
+from revinf.literature.kin_pairs import find_kin_pairs
 from revinf.spaces.brain import BrainReference, grey_lattice
 
 __all__ = [
@@ -47,6 +48,7 @@ ARRAY_TYPES: dict[str, tuple[str, tuple[int | str, ...]]] = {
     "study_doi_ends": ("int64", ("studies",)),
     "term_text": ("uint8", ("*",)),
     "term_ends": ("int64", ("terms",)),
+    "kin_pairs": ("int32", ("*", 2)),
     "brain_tissue": ("uint8", ("*", "*", "*")),
     "brain_affine": ("float64", (4, 4)),
     "grid_tenths": ("int16", ("grid", 3)),
@@ -97,6 +99,9 @@ def pack_studies(studies: ImportedStudies) -> Arrays:
         ("term", studies.terms),
     ):
         arrays[f"{name}_text"], arrays[f"{name}_ends"] = pack_text(items)
+    arrays["kin_pairs"] = find_kin_pairs(
+        arrays["study_term_starts"], arrays["study_terms"], arrays["term_study_starts"], arrays["term_studies"]
+    )
     return arrays
 
 

@@ -170,6 +170,10 @@ class Queries:
         """The DOI of each study; empty where none is known."""
         return self._text("study_doi")
 
+    def kin_pairs(self) -> NDArray[np.int32]:
+        """Return the pairs of terms that label largely the same studies, (K, 2)."""
+        return np.asarray(self._arrays["kin_pairs"])
+
     def arrays(self) -> Arrays:
         """Return the arrays by name; not to be written to."""
         return dict(self._arrays)

@@ -253,6 +253,7 @@ _INDICES = (
     ("peak_study", "study_n_peaks"),
     ("study_terms", "term_ends"),
     ("term_studies", "study_n_peaks"),
+    ("kin_pairs", "term_ends"),
 )
 
 

@@ -26,8 +26,8 @@ def place_words(item: AuditedClaim) -> str:
 def own_paper_words(audit: Audit) -> list[str]:
     """Say which counted studies report the coordinates of an audit, and what to do about it."""
     return [
-        f"{own.n_shared} of the {own.n_asked} coordinates are those of the counted study {own.study!r}: is it the paper "
-        f"itself? Then ask again with --without {own.study}, since a study must not be evidence for its own claims."
+        f"{own.n_shared} of the {own.n_asked} coordinates are those of the counted study {own.study!r}: is it the "
+        f"paper itself? Then ask again with --without {own.study}; a study must not be evidence for its own claims."
         for own in audit.own_papers
     ]
 

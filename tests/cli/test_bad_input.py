@@ -173,7 +173,7 @@ def break_the_manifest(folder):
 
 def write_another_format(folder):
     path = folder / "literature.json"
-    path.write_text(path.read_text().replace("revinf/literature/1", "revinf/literature/99"))
+    path.write_text(path.read_text().replace("revinf/literature/2", "revinf/literature/99"))
 
 
 def change_a_fingerprint(folder):

@@ -75,7 +75,7 @@ def test_every_array_of_another_type_or_shape_is_named(copy, name):
         lambda array: array.astype(">f4"),
         lambda array: array.astype(array.dtype.newbyteorder()) if array.itemsize > 1 else array.view(bool),
         lambda array: array.reshape(*array.shape, 1),
-        lambda array: np.concatenate([array, array[:1] if len(array) else np.zeros(1, array.dtype)]),
+        lambda array: np.concatenate([array, array[:1] if len(array) else np.zeros((1, *array.shape[1:]), array.dtype)]),
     ]
     for change in changes:
         rewrite(copy, name, change)
@@ -203,7 +203,7 @@ def test_a_manifest_that_is_not_text_is_refused(copy):
     assert "not a literature manifest" in refusal(copy)
 
 
-@pytest.mark.parametrize("stated", ["revinf/literature/2", "other/1", None, 1, ["revinf/literature/1"], {}])
+@pytest.mark.parametrize("stated", ["revinf/literature/1", "other/1", None, 1, ["revinf/literature/2"], {}])
 def test_another_format_is_refused_with_both_versions(copy, stated):
     changed(copy, lambda content: content.update(format=stated))
     assert f"this revinf reads {FORMAT!r}; build it again" in refusal(copy)

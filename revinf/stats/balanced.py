@@ -15,9 +15,6 @@ from revinf.stats.rates import count_arrays
 
 __all__ = ["balanced_ratio"]
 
-_BLOCK = 1 << 21
-"""Random rates held at a time."""
-
 
 def balanced_ratio(
     own: tuple[int, int],
@@ -56,7 +53,8 @@ def balanced_ratio(
     Notes
     -----
     The estimate is that of the plain observed rates. The interval is equal-tailed over independent
-    Beta(k + 1/2, n - k + 1/2) rates, and is stretched to hold the estimate where it would not.
+    Beta(k + 1/2, n - k + 1/2) rates, the mean of the rivals' by a beta distribution of the same mean and variance, and
+    is stretched to hold the estimate where it would not.
 
     Examples
     --------
@@ -73,11 +71,12 @@ def balanced_ratio(
         return None
     estimate = float(own_k[0] / own_n[0] / (k / n).mean())
     generator = np.random.default_rng(seed)
-    rows = max(1, _BLOCK // len(k))
-    found = []
-    for start in range(0, draws, rows):
-        size = min(rows, draws - start)
-        rivals = generator.beta(k + 0.5, n - k + 0.5, size=(size, len(k))).mean(axis=1)
-        found.append(generator.beta(own_k[0] + 0.5, own_n[0] - own_k[0] + 0.5, size=size) / rivals)
-    low, high = np.quantile(np.concatenate(found), [tail, 1 - tail])
+    # The mean of the rivals' rates is drawn from the beta distribution of its own mean and variance: exact for
+    # one rival, close for several (tests), and as quick for a thousand.
+    mean = float(((k + 0.5) / (n + 1)).mean())
+    variance = float(((k + 0.5) * (n - k + 0.5) / ((n + 1.0) ** 2 * (n + 2))).sum()) / len(k) ** 2
+    weight = mean * (1 - mean) / variance - 1
+    rivals = generator.beta(mean * weight, (1 - mean) * weight, size=draws)
+    own_rate = generator.beta(own_k[0] + 0.5, own_n[0] - own_k[0] + 0.5, size=draws)
+    low, high = np.quantile(own_rate / rivals, [tail, 1 - tail])
     return Estimate(estimate, min(estimate, float(low)), max(estimate, float(high)))

@@ -75,7 +75,9 @@ def test_every_array_of_another_type_or_shape_is_named(copy, name):
         lambda array: array.astype(">f4"),
         lambda array: array.astype(array.dtype.newbyteorder()) if array.itemsize > 1 else array.view(bool),
         lambda array: array.reshape(*array.shape, 1),
-        lambda array: np.concatenate([array, array[:1] if len(array) else np.zeros((1, *array.shape[1:]), array.dtype)]),
+        lambda array: np.concatenate(
+            [array, array[:1] if len(array) else np.zeros((1, *array.shape[1:]), array.dtype)]
+        ),
     ]
     for change in changes:
         rewrite(copy, name, change)

@@ -50,3 +50,18 @@ def test_wrong_input_is_refused() -> None:
         balanced_ratio((1, 2), [1], [2], draws=0)
     with pytest.raises(InvalidProbabilityError):
         balanced_ratio((1, 2), [1], [2], level=1.0)
+
+
+@pytest.mark.parametrize("k", [[7, 2, 3, 2, 2], [0, 1], [5], [1, 0, 0, 2, 9, 4, 1]])
+def test_interval_is_that_of_independent_rates_drawn_one_by_one(k: list[int]) -> None:
+    import numpy as np
+
+    n = [20 + 7 * at for at in range(len(k))]
+    random = np.random.default_rng(3)
+    drawn = [random.beta(a + 0.5, b - a + 0.5, 200_000) for a, b in zip(k, n, strict=True)]
+    ratio = random.beta(10.5, 30.5, 200_000) / np.mean(drawn, axis=0)
+    low, high = np.quantile(ratio, [0.025, 0.975])
+    found = balanced_ratio((10, 40), k, n, draws=200_000)
+    assert found is not None
+    assert found.low == pytest.approx(min(low, found.estimate), rel=0.04)
+    assert found.high == pytest.approx(max(high, found.estimate), rel=0.04)

@@ -21,8 +21,11 @@ BACKGROUND_RADIUS_MM = 10.0
 SPACING_TENTHS = 40
 """The grid: coordinates that are multiples of 4 mm."""
 
-_PAIRS = 3_000_000
-"""Peak and location pairs held at a time: about 100 MB."""
+_STUDIES, _PEAKS, _RESIDUES = 64, 20_000, 2_000
+"""Studies, peaks, and places within a cell that are held at a time: some tens of megabytes."""
+
+_PLACE = np.array([SPACING_TENTHS**2, SPACING_TENTHS, 1], dtype=np.int64)
+"""Makes one number of the place within a cell, and back."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -94,47 +97,91 @@ def compute_background(
     ([1, 1, 0], [2, 0])
     """
     order = np.argsort(peak_study, kind="stable")
-    peaks, studies = np.asarray(peak_tenths)[order].astype(np.int32), np.asarray(peak_study)[order]
-    lookup, corner = _lookup(grid_tenths)
-    limit = squared_tenths(radius_mm)
-    reach = int(np.ceil(np.sqrt(limit)))
-    width = 2 * reach // SPACING_TENTHS + 2
-    steps = np.stack(np.meshgrid(*[np.arange(width)] * 3, indexing="ij"), axis=-1).reshape(-1, 3)
-    location_hits = np.zeros(len(grid_tenths), dtype=np.int32)
+    peaks, studies = np.asarray(peak_tenths)[order].astype(np.int64), np.asarray(peak_study)[order].astype(np.int64)
+    stamp = _Stamp.of(np.asarray(grid_tenths, dtype=np.int64), peaks, radius_mm)
+    location_hits = np.zeros(len(grid_tenths), dtype=np.int64)
     study_locations = np.zeros(n_studies, dtype=np.int32)
-    for start, stop in _blocks(studies, max(1, _PAIRS // len(steps))):
-        block = peaks[start:stop]
-        first = -((reach - block) // SPACING_TENTHS)  # the lowest multiple that is not below block - reach
-        cells = first[:, None, :] + steps[None]
-        away = cells * SPACING_TENTHS - block[:, None, :]
-        near = np.einsum("psi,psi->ps", away, away, dtype=np.int64) <= limit
-        shifted = cells[near] - corner
-        inside = ((shifted >= 0) & (shifted < lookup.shape)).all(axis=1)
-        location = lookup[tuple(shifted[inside].T)]
-        study = np.broadcast_to(studies[start:stop, None], near.shape)[near][inside]
-        grey = location >= 0
-        pair = np.unique(study[grey].astype(np.int64) * len(grid_tenths) + location[grey])
-        location_hits += np.bincount(pair % len(grid_tenths), minlength=len(grid_tenths)).astype(np.int32)
-        study_locations += np.bincount(pair // len(grid_tenths), minlength=n_studies).astype(np.int32)
-    return Background(location_hits=location_hits, study_locations=study_locations)
+    # One row a study: a cell that several of its peaks reach is marked once.
+    marked = np.zeros((_STUDIES, stamp.size), dtype=bool)
+    for first in range(0, n_studies, _STUDIES):
+        start, stop = np.searchsorted(studies, [first, first + _STUDIES])
+        if start == stop:
+            continue
+        for low in range(start, stop, _PEAKS):
+            part = slice(low, min(low + _PEAKS, stop))
+            rows = (studies[part] - first) * stamp.size
+            marked.reshape(-1)[(rows + stamp.cell[part])[:, None] + stamp.table[stamp.row[part]]] = True
+        here = marked[:, stamp.grid]
+        location_hits += here.sum(axis=0)
+        last = min(first + _STUDIES, n_studies)
+        study_locations[first:last] = here.sum(axis=1)[: last - first]
+        marked[:] = False
+    return Background(location_hits=location_hits.astype(np.int32), study_locations=study_locations)
 
 
-def _lookup(grid_tenths: NDArray[np.int16]) -> tuple[NDArray[np.int32], NDArray[np.int32]]:
-    """Return a volume with the number of each location, -1 elsewhere, and its lowest corner in cells."""
-    cells = np.asarray(grid_tenths, dtype=np.int32) // SPACING_TENTHS
-    corner = cells.min(axis=0)
-    lookup = np.full(cells.max(axis=0) - corner + 1, -1, dtype=np.int32)
-    lookup[tuple((cells - corner).T)] = np.arange(len(cells))
-    return lookup, corner
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class _Stamp:
+    """A sphere stamped on the grid's cells: which cells lie within it depends only on where in its cell a peak is.
+
+    Parameters
+    ----------
+    grid : (G,) int64 array
+        Flat position of each location in a box of cells with a margin around the grid.
+    size : int
+        Cells of the box.
+    cell : (P,) int64 array
+        Flat cell of each peak; a peak that reaches nothing of the grid stands in the margin.
+    row : (P,) int64 array
+        Row of `table` for each peak.
+    table : (R, M) int64 array
+        Offsets of the cells within reach for each place within a cell, rows filled up with repeats.
+    """
+
+    grid: NDArray[np.int64]
+    size: int
+    cell: NDArray[np.int64]
+    row: NDArray[np.int64]
+    table: NDArray[np.int64]
+
+    @classmethod
+    def of(cls, grid_tenths: NDArray[np.int64], peaks: NDArray[np.int64], radius_mm: float) -> _Stamp:
+        """Make the box for a grid, and look up where its peaks reach."""
+        limit = squared_tenths(radius_mm)
+        reach = int(np.ceil(np.sqrt(limit))) // SPACING_TENTHS + 1
+        margin = reach + 1
+        cells = grid_tenths // SPACING_TENTHS
+        corner = cells.min(axis=0) - 2 * margin
+        shape = cells.max(axis=0) + 2 * margin + 1 - corner
+        strides = np.array([shape[1] * shape[2], shape[2], 1], dtype=np.int64)
+        residues, row = np.unique(peaks % SPACING_TENTHS @ _PLACE, return_inverse=True)
+        table, empty = _reached(residues, reach, limit, strides)
+        cell = peaks // SPACING_TENTHS - corner
+        within = ((cell >= margin) & (cell < shape - margin)).all(axis=1) & ~empty[row.reshape(-1)]
+        # From a corner of the margin, no offset reaches the grid.
+        nowhere = int(np.full(3, margin, dtype=np.int64) @ strides)
+        return cls(
+            grid=(cells - corner) @ strides,
+            size=int(shape.prod()),
+            cell=np.where(within, cell @ strides, nowhere),
+            row=row.reshape(-1),
+            table=table,
+        )
 
 
-def _blocks(studies: NDArray[np.int32], size: int) -> list[tuple[int, int]]:
-    """Return stretches of whole studies with about `size` peaks; one study may be longer."""
-    ends = np.flatnonzero(np.diff(studies, append=-1)) + 1
-    blocks, start = [], 0
-    while start < len(studies):
-        reachable = ends[(ends > start) & (ends <= start + size)]
-        stop = int(reachable[-1]) if len(reachable) else int(ends[ends > start][0])
-        blocks.append((start, stop))
-        start = stop
-    return blocks
+def _reached(
+    residues: NDArray[np.int64], reach: int, limit: int, strides: NDArray[np.int64]
+) -> tuple[NDArray[np.int64], NDArray[np.bool_]]:
+    """Return, for each place within a cell, the offsets of the cells in reach, and whether there are none."""
+    span = np.arange(-reach, reach + 1)
+    steps = np.stack(np.meshgrid(span, span, span, indexing="ij"), axis=-1).reshape(-1, 3)
+    near = np.zeros((len(residues), len(steps)), dtype=bool)
+    for start in range(0, len(residues), _RESIDUES):
+        part = residues[start : start + _RESIDUES]
+        within = part[:, None] // _PLACE % SPACING_TENTHS
+        away = SPACING_TENTHS * steps[None] - within[:, None, :]
+        near[start : start + _RESIDUES] = (away**2).sum(axis=2) <= limit
+    width = max(1, int(near.sum(axis=1).max())) if len(near) else 1
+    order = np.argsort(~near, axis=1, kind="stable")[:, :width]
+    offsets = (steps @ strides)[order]
+    taken = np.take_along_axis(near, order, axis=1)
+    return np.where(taken, offsets, offsets[:, :1]), np.asarray(~near.any(axis=1))

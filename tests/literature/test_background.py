@@ -59,14 +59,15 @@ def test_background_equals_a_plain_loop(radius_mm, studies, cells, shuffle):
     assert (found.location_hits.dtype, found.study_locations.dtype) == (np.int32, np.int32)
 
 
-@pytest.mark.parametrize("pairs", [1, 50, 2_000])
+@pytest.mark.parametrize("block", [1, 3, 7])
 @pytest.mark.parametrize("radius_mm", RADII)
-def test_background_does_not_depend_on_the_size_of_its_blocks(monkeypatch, radius_mm, pairs):
+def test_background_does_not_depend_on_the_size_of_its_blocks(monkeypatch, radius_mm, block):
     generator = np.random.default_rng(3)
     studies = [generator.integers(-200, 200, (generator.integers(0, 9), 3)).tolist() for _ in range(30)]
     cells = [tuple(cell) for cell in np.unique(generator.integers(-5, 6, (200, 3)), axis=0).tolist()]
     whole = counted(studies, cells, radius_mm)
-    monkeypatch.setattr(background, "_PAIRS", pairs)
+    for name in ("_STUDIES", "_PEAKS", "_RESIDUES"):
+        monkeypatch.setattr(background, name, block)
     split = counted(studies, cells, radius_mm)
     by_location, by_study = by_loop(studies, cells, radius_mm)
     assert split.location_hits.tolist() == whole.location_hits.tolist() == by_location
@@ -74,11 +75,12 @@ def test_background_does_not_depend_on_the_size_of_its_blocks(monkeypatch, radiu
     assert radius_mm < 4 or sum(by_location)
 
 
-def test_study_that_is_longer_than_a_block_stays_whole():
-    studies = np.array([0, 0, 0, 0, 0, 1, 2, 2], dtype=np.int32)
-    assert background._blocks(studies, 2) == [(0, 5), (5, 6), (6, 8)]
-    assert background._blocks(studies, 3) == [(0, 5), (5, 8)]
-    assert background._blocks(studies[:0], 3) == []
+def test_peaks_far_from_the_grid_reach_nothing_and_harm_nothing():
+    far = [[(3000, 0, 0)], [(0, 0, 0)], [(-3000, 3000, -3000), (0, 0, 5)]]
+    found = counted(far, [(0, 0, 0), (1, 0, 0)], 4.0)
+    by_location, by_study = by_loop(far, [(0, 0, 0), (1, 0, 0)], 4.0)
+    assert found.location_hits.tolist() == by_location
+    assert found.study_locations.tolist() == by_study
 
 
 def test_studies_without_peaks_hit_nowhere():

@@ -17,7 +17,7 @@ from revinf.evidence.claims_table import ClaimsTable, Refusal, Unplaced
 from revinf.evidence.own_paper import OwnPaper, own_papers
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.rewording import Advice, advise
-from revinf.evidence.settle import settle
+from revinf.evidence.settle import RIVALS, settle
 from revinf.evidence.settlement import Settlement
 from revinf.evidence.sources import LiteratureSource, Source, as_source
 from revinf.exceptions import InvalidClaimError, RevinfError, UnknownTermError
@@ -166,16 +166,17 @@ def _audited(claim: Claim, source: Source, choices: Choices | None) -> AuditedCl
         assessment=assessment,
         advice=advise(assessment),
         problem=None,
-        settlement=_settlement(claim, source, choices),
+        settlement=_settlement(claim, source, choices, assessment),
     )
 
 
-def _settlement(claim: Claim, source: Source, choices: Choices | None) -> Settlement | None:
+def _settlement(claim: Claim, source: Source, choices: Choices | None, assessment: Assessment) -> Settlement | None:
     """Return where else to look, if the source can tell."""
     if not isinstance(source, LiteratureSource) or not claim.peaks or claim.absent:
         return None
     try:
-        return settle(claim, source, choices=choices, places=2)
+        rivals = [rival.term for rival in assessment.selectivity.rivals[:RIVALS]]
+        return settle(claim, source, rivals, choices, places=2) if rivals else None
     except RevinfError:
         return None
 

@@ -22,12 +22,15 @@ from revinf.literature.literature import Literature
 from revinf.stats.estimates import Estimate
 from revinf.stats.information import entropy_bits, expected_gain, updated
 
-__all__ = ["FEWEST", "settle"]
+__all__ = ["FEWEST", "RIVALS", "settle"]
 
 FEWEST = 5
 """Studies that can be asked where else they are active; a candidate with fewer is left out."""
 
-_RIVALS, _PLACES, _FINALISTS = 3, 5, 200
+RIVALS = 3
+"""Leading rivals that are taken where none is named."""
+
+_PLACES, _FINALISTS = 5, 200
 _DRAWS, _SEED = 1000, 20132
 
 
@@ -133,7 +136,7 @@ def _leading(claim: Claim, source: LiteratureSource, studies: StudyLevel, choice
     words = choices.vocabulary or shipped_vocabulary()
     answer = source.answer(claim)
     position = answer.counts.terms.index(claim.term)
-    request = RivalRequest(named=(), excluded=tuple(claim.excluded), shown=_RIVALS, prior=0.5)
+    request = RivalRequest(named=(), excluded=tuple(claim.excluded), shown=RIVALS, prior=0.5)
     chosen = select(position, answer.counts, studies, words, request, RatioSettings(level=choices.level))
     return [rival.term for rival in chosen.rivals]
 
@@ -144,8 +147,13 @@ def _hits(literature: Literature, members: NDArray[np.bool_], radius_mm: float) 
     columns = []
     for row in members:
         mine = row[arrays["peak_study"]]
+        _, number = np.unique(arrays["peak_study"][mine], return_inverse=True)
         found = compute_background(
-            arrays["peak_tenths"][mine], arrays["peak_study"][mine], len(row), arrays["grid_tenths"], radius_mm
+            arrays["peak_tenths"][mine],
+            number.reshape(-1).astype(np.int32),
+            int(row.sum()),
+            arrays["grid_tenths"],
+            radius_mm,
         )
         columns.append(found.location_hits.astype(np.int64))
     return np.stack(columns, axis=1)

@@ -54,7 +54,7 @@ def calibrate(
     words : Vocabulary, optional
         Kinds of terms; the shipped one where left out.
     progress : callable, optional
-        Told how many folds are done, of how many.
+        Told how many steps are done, of how many: the folds, then the processes.
 
     Returns
     -------
@@ -74,9 +74,12 @@ def calibrate(
     _, groups = everyone.groups()
     fold_of = grouped_folds(groups, min(folds, len(np.unique(groups))))
     sampled = _sample(literature, len(names))
-    tasks = [(literature, carries, fold_of == fold, radius_mm) for fold in range(int(fold_of.max()) + 1)]
-    found = list(_predicted(tasks, jobs, progress))
-    table = ForecastTable.of(found, sampled)
+    n_folds = int(fold_of.max()) + 1
+    tell = progress or (lambda _done, _of: None)
+    steps = n_folds + len(names)
+    tasks = [(literature, carries, fold_of == fold, sampled, radius_mm) for fold in range(n_folds)]
+    found = list(_predicted(tasks, jobs, lambda done: tell(done, steps)))
+    table = ForecastTable.of(found)
     single = _single(table)
     exponent = fit_discount(table.prior.ravel(), table.product.ravel(), table.outcome.ravel())
     each = _without_each_fold(table)
@@ -84,7 +87,7 @@ def calibrate(
     # Every study's discount comes from the other folds, so that the repaired scores are honest.
     own = np.array([each[fold] for fold in table.fold])[:, None]
     repaired = discounted(table.prior, own * table.product)
-    supported = supported_terms(literature, carries, radius_mm)
+    supported = supported_terms(literature, carries, radius_mm, lambda done: tell(n_folds + done, steps))
     terms = by_term(names, carries, table, (single, naive, repaired), supported)
     scores = (
         scores_of(single, table.peak_outcome, table.peak_prior),
@@ -139,9 +142,9 @@ def _sample(literature: Literature, n_terms: int) -> NDArray[np.bool_]:
 
 
 def _predicted(
-    tasks: list[tuple[Literature, NDArray[np.bool_], NDArray[np.bool_], float]],
+    tasks: list[tuple[Literature, NDArray[np.bool_], NDArray[np.bool_], NDArray[np.bool_], float]],
     jobs: int | None,
-    progress: Callable[[int, int], None] | None,
+    tell: Callable[[int], None],
 ) -> Iterable[Predictions]:
     """Yield the predictions of each fold, in order."""
     if jobs == 1:
@@ -151,8 +154,7 @@ def _predicted(
 
         done = Parallel(n_jobs=jobs, return_as="generator")(delayed(predict_fold)(*task) for task in tasks)
     for fold, predictions in enumerate(done):
-        if progress is not None:
-            progress(fold + 1, len(tasks))
+        tell(fold + 1)
         yield predictions
 
 

@@ -42,7 +42,11 @@ class Predictions:
 
 
 def predict_fold(
-    literature: Literature, carries: NDArray[np.bool_], held: NDArray[np.bool_], radius_mm: float
+    literature: Literature,
+    carries: NDArray[np.bool_],
+    held: NDArray[np.bool_],
+    scored: NDArray[np.bool_],
+    radius_mm: float,
 ) -> Predictions:
     """Count for every peak of the held-out studies in all the others.
 
@@ -54,6 +58,8 @@ def predict_fold(
         Which study carries which process.
     held : (S,) bool array
         Which studies are held out.
+    scored : (S,) bool array
+        Which of them are asked; every one, or a sample of a large literature.
     radius_mm : float, mm
         Of the sphere around each peak.
 
@@ -63,8 +69,9 @@ def predict_fold(
         Of this fold.
     """
     arrays = literature.arrays()
-    studies = np.flatnonzero(held)
-    peaks = np.flatnonzero(held[arrays["peak_study"]])
+    asked = held & scored
+    studies = np.flatnonzero(asked)
+    peaks = np.flatnonzero(asked[arrays["peak_study"]])
     total = carries[~held].sum(axis=0).astype(np.int64)
     n_train = int((~held).sum())
     counts = np.zeros((len(peaks), carries.shape[1], 4), dtype=np.int32)

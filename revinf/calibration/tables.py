@@ -34,28 +34,26 @@ class ForecastTable:
     ratio: str
 
     @classmethod
-    def of(cls, found: Sequence[Predictions], sampled: NDArray[np.bool_]) -> ForecastTable:
-        """Join the folds; only the sampled studies are scored."""
+    def of(cls, found: Sequence[Predictions]) -> ForecastTable:
+        """Join the folds."""
         parts: dict[str, list[NDArray[Any]]] = {}
         counts = []
         for fold, item in enumerate(found):
-            scored = sampled[item.study]
-            table = item.counts[scored]
+            table = item.counts
             counts.append(table)
-            own = np.searchsorted(item.studies, item.study[scored])
+            own = np.searchsorted(item.studies, item.study)
             prior = np.clip(item.prior, 1e-9, 1 - 1e-9)
             logs = _log_half_ratio(table)
             product = np.zeros(item.outcome.shape)
             np.add.at(product, own, logs)
-            kept = sampled[item.studies]
             for name, value in (
                 ("peak_prior", np.broadcast_to(prior, logs.shape)),
                 ("peak_outcome", item.outcome[own]),
-                ("active", item.active[scored]),
-                ("product", product[kept]),
-                ("prior", np.broadcast_to(prior, product[kept].shape)),
-                ("outcome", item.outcome[kept]),
-                ("fold", np.full(int(kept.sum()), fold)),
+                ("active", item.active),
+                ("product", product),
+                ("prior", np.broadcast_to(prior, product.shape)),
+                ("outcome", item.outcome),
+                ("fold", np.full(len(item.studies), fold)),
             ):
                 parts.setdefault(name, []).append(value)
         ratios, how = _ratios(np.concatenate(counts))

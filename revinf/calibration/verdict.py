@@ -50,7 +50,7 @@ def verdict(
 def _single(single: Scores) -> str:
     """Say what one peak is worth."""
     gain = single.brier_skill or 0.0
-    if gain < 0:
+    if gain < -_HARDLY / 4:
         how = "does worse than the base rate alone"
     elif gain < _HARDLY:
         how = "hardly improves on the base rate"
@@ -58,7 +58,7 @@ def _single(single: Scores) -> str:
         how = "improves a little on the base rate"
     else:
         how = "clearly improves on the base rate"
-    return f"A single peak {how} (Brier skill {gain:.2f}{_area(single)}): do not rest a conclusion on one."
+    return f"A single peak {how} (Brier skill {_figure(gain)}{_area(single)}): do not rest a conclusion on one."
 
 
 def _combined(combined: Scores) -> str:
@@ -71,7 +71,7 @@ def _combined(combined: Scores) -> str:
         sure = "and gain hardly anything over the base rate"
     else:
         sure = "and improve on the base rate"
-    return f"All peaks of a study, multiplied, {ranks} {sure} (Brier skill {gain:.2f}{_area(combined)})."
+    return f"All peaks of a study, multiplied, {ranks} {sure} (Brier skill {_figure(gain)}{_area(combined)})."
 
 
 def _discount(repaired: Scores, discount: Discount) -> str:
@@ -80,12 +80,17 @@ def _discount(repaired: Scores, discount: Discount) -> str:
     span = f"{b:.2f} ({discount.low:.2f} to {discount.high:.2f})"
     gain = repaired.brier_skill or 0.0
     if b >= _FAIR:
-        return f"Peaks count as nearly independent: the exponent that fits best is {span}, Brier skill {gain:.2f}."
+        return f"Peaks count as nearly independent: the exponent that fits best is {span}, Brier skill {_figure(gain)}."
     how = "strongly overstates" if b < _STEEP else "overstates"
     return (
         f"Multiplying peaks as if they were independent {how}: the exponent that fits best is {span}; with it the "
-        f"Brier skill is {gain:.2f}."
+        f"Brier skill is {_figure(gain)}."
     )
+
+
+def _figure(value: float) -> str:
+    """Write a skill; one that rounds to nothing has no sign."""
+    return f"{value:.2f}".replace("-0.00", "0.00")
 
 
 def _area(scores: Scores) -> str:

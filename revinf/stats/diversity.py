@@ -25,7 +25,7 @@ __all__ = [
     "shares",
 ]
 
-_BLOCK = 2**20  # random numbers held at once: 8 MB
+_BLOCK = 1 << 18
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,0 +1,1 @@
+"""Speed and memory, on request: `python -m tests.benchmarks [--tenfold]`. No part of the tests."""

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import os
 import statistics
 import subprocess
 import sys
@@ -34,18 +33,24 @@ def function(run: Callable[[], object], *, repeat: int = 5) -> Measured:
 
 def process(command: Sequence[str], *, repeat: int = 5, warm: bool = True) -> Measured:
     """Time a whole process with everything it loads; one run before it fills the caches of the system."""
-    times, memory = [], 0.0
+    times = []
     for number in range(repeat + warm):
         start = time.perf_counter()
         child = subprocess.Popen(command, stdout=subprocess.DEVNULL, stderr=subprocess.DEVNULL)
-        _, status, usage = os.wait4(child.pid, 0)
-        child.returncode = os.waitstatus_to_exitcode(status)
-        if child.returncode:
+        if child.wait():
             raise SystemExit(f"{' '.join(command)} ended with {child.returncode}")
         if number >= warm:
             times.append(time.perf_counter() - start)
-            memory = max(memory, usage.ru_maxrss / 1024)
-    return Measured(statistics.median(times), memory)
+    # A child's largest memory counts what its parent had when it was made, so a small parent asks.
+    asked = subprocess.run([sys.executable, "-S", "-c", _MEMORY, *command], capture_output=True, text=True, check=True)
+    return Measured(statistics.median(times), int(asked.stdout) / 1024)
+
+
+_MEMORY = """
+import resource, subprocess, sys
+subprocess.run(sys.argv[1:], stdout=subprocess.DEVNULL, stderr=subprocess.DEVNULL, check=True)
+print(resource.getrusage(resource.RUSAGE_CHILDREN).ru_maxrss)
+"""
 
 
 def python(code: str, *, repeat: int = 5) -> Measured:

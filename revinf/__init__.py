@@ -25,9 +25,11 @@ if TYPE_CHECKING:
     from revinf.evidence.assess import assess
     from revinf.evidence.assessment import Assessment
     from revinf.evidence.audit import Audit, audit
+    from revinf.evidence.brain_map import BrainMap, map_term
     from revinf.evidence.choices import Choices
     from revinf.evidence.claim import Claim
     from revinf.evidence.claims_table import claims_from_frame, read_claims
+    from revinf.evidence.comparison import Comparison, compare
     from revinf.evidence.map_peaks import map_peaks
     from revinf.evidence.profile import Profile, profile
     from revinf.evidence.settle import settle
@@ -49,9 +51,11 @@ __all__ = [
     "Assessment",
     "Audit",
     "BaseRateTable",
+    "BrainMap",
     "Calibration",
     "Choices",
     "Claim",
+    "Comparison",
     "Description",
     "ImportOptions",
     "Literature",
@@ -65,8 +69,10 @@ __all__ = [
     "calibrate",
     "choose_source",
     "claims_from_frame",
+    "compare",
     "leave_out",
     "map_peaks",
+    "map_term",
     "profile",
     "read_claims",
     "read_document",
@@ -77,6 +83,10 @@ __all__ = [
 ]
 
 _HOMES = {
+    "BrainMap": "revinf.evidence.brain_map",
+    "Comparison": "revinf.evidence.comparison",
+    "compare": "revinf.evidence.comparison",
+    "map_term": "revinf.evidence.brain_map",
     "Calibration": "revinf.calibration.summaries",
     "Settlement": "revinf.evidence.settlement",
     "calibrate": "revinf.calibration.calibrate",

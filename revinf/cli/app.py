@@ -11,8 +11,10 @@ from revinf.cli.audit import audit
 from revinf.cli.build import build
 from revinf.cli.calibrate import calibrate
 from revinf.cli.check import check
+from revinf.cli.compare import compare
 from revinf.cli.demo import demo
 from revinf.cli.inspect import inspect
+from revinf.cli.map_term import map_term
 from revinf.cli.one_line import LineGroup, PeakCommand
 from revinf.cli.peaks import peaks
 from revinf.cli.profile import profile
@@ -58,7 +60,9 @@ app.command(cls=PeakCommand)(settle)
 app.command()(scan)
 app.command()(peaks)
 app.command()(audit)
+app.command("map")(map_term)
 app.command()(calibrate)
+app.command()(compare)
 app.command()(build)
 app.command()(inspect)
 app.command()(terms)

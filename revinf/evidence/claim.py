@@ -11,7 +11,7 @@ from revinf.exceptions import InvalidClaimError, InvalidProbabilityError
 from revinf.knowledge import normalise_term
 from revinf.stats.estimates import check_probability
 
-__all__ = ["DEFAULT_PRIOR", "DEFAULT_RADIUS_MM", "Claim", "Point", "parsed_prior"]
+__all__ = ["DEFAULT_PRIOR", "DEFAULT_RADIUS_MM", "Claim", "Point", "checked_prior", "parsed_prior"]
 
 DEFAULT_PRIOR = 0.5
 
@@ -122,3 +122,32 @@ def parsed_prior(text: str) -> float | Literal["prevalence"]:
         raise InvalidProbabilityError(
             f"prior must be a probability or the word prevalence, but got {text!r}; use 0.5 for even odds"
         ) from None
+
+
+def checked_prior(text: str) -> float | Literal["prevalence"]:
+    """Return a prior as somebody typed it, in its range.
+
+    Parameters
+    ----------
+    text : str
+        What was typed.
+
+    Returns
+    -------
+    float or "prevalence"
+        Strictly between 0 and 1.
+
+    Raises
+    ------
+    InvalidProbabilityError
+        If it is neither a probability nor the word.
+
+    Examples
+    --------
+    >>> checked_prior("0.3")
+    0.3
+    """
+    prior = parsed_prior(text)
+    if prior == "prevalence":
+        return "prevalence"
+    return check_probability(prior, "prior", "use 0.5 for even odds, 0.99 for near-certainty, or prevalence")

@@ -12,7 +12,7 @@ from revinf.knowledge import table_path
 from revinf.literature.leaving_out import leave_out
 from revinf.literature.literature import Literature
 
-__all__ = ["ENVIRONMENT", "choose_source", "opened_literature"]
+__all__ = ["ENVIRONMENT", "choose_source", "named_or_every", "opened_literature", "source_at"]
 
 ENVIRONMENT = "REVINF_LITERATURE"
 """Environment variable that names the literature to use where none is given."""
@@ -86,3 +86,43 @@ def choose_source(
         return TableSource(BaseRateTable.read(table))
     shipped = BaseRateTable.read(table_path("open_base_rates"), name="open base rates")
     return TableSource(shipped, study_is="experiments", shipped=True)
+
+
+def named_or_every(term: str | None, every: bool) -> str | None:
+    """Return the term that is asked for, or None for all of them.
+
+    Raises
+    ------
+    InvalidClaimError
+        If both or neither are asked for.
+
+    Examples
+    --------
+    >>> named_or_every("fear", False)
+    'fear'
+    """
+    if (term is not None) == every:
+        raise InvalidClaimError("name one term with --term, or ask for --all-terms")
+    return term
+
+
+def source_at(path: str | Path) -> Source:
+    """Return the source that stands at a path: a literature folder, or a base-rate table.
+
+    Parameters
+    ----------
+    path : path
+        A folder is a literature, a file a table.
+
+    Returns
+    -------
+    Source
+        Opened.
+
+    Raises
+    ------
+    LiteratureError, InputFileError
+        If it cannot be read.
+    """
+    path = Path(path)
+    return TableSource(BaseRateTable.read(path)) if path.is_file() else LiteratureSource(Literature.open(path))

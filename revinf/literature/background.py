@@ -24,9 +24,6 @@ SPACING_TENTHS = 40
 _STUDIES, _PEAKS, _RESIDUES = 64, 20_000, 2_000
 """Studies, peaks, and places within a cell that are held at a time: some tens of megabytes."""
 
-_PLACE = np.array([SPACING_TENTHS**2, SPACING_TENTHS, 1], dtype=np.int64)
-"""Makes one number of the place within a cell, and back."""
-
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
 class Background:
@@ -67,6 +64,8 @@ def compute_background(
     n_studies: int,
     grid_tenths: NDArray[np.int16],
     radius_mm: float,
+    *,
+    spacing_tenths: int = SPACING_TENTHS,
 ) -> Background:
     """Count over a grid of locations.
 
@@ -79,9 +78,11 @@ def compute_background(
     n_studies : int
         Number of studies.
     grid_tenths : (G, 3) int16 array, tenths of a millimetre
-        Locations; their coordinates are multiples of `SPACING_TENTHS`.
+        Locations; their coordinates are multiples of the spacing.
     radius_mm : float, mm
         Radius of the sphere.
+    spacing_tenths : int, default 40
+        Of the grid.
 
     Returns
     -------
@@ -98,7 +99,7 @@ def compute_background(
     """
     order = np.argsort(peak_study, kind="stable")
     peaks, studies = np.asarray(peak_tenths)[order].astype(np.int64), np.asarray(peak_study)[order].astype(np.int64)
-    stamp = _Stamp.of(np.asarray(grid_tenths, dtype=np.int64), peaks, radius_mm)
+    stamp = _Stamp.of(np.asarray(grid_tenths, dtype=np.int64), peaks, radius_mm, spacing_tenths)
     location_hits = np.zeros(len(grid_tenths), dtype=np.int64)
     study_locations = np.zeros(n_studies, dtype=np.int32)
     # One row a study: a cell that several of its peaks reach is marked once.
@@ -144,18 +145,19 @@ class _Stamp:
     table: NDArray[np.int64]
 
     @classmethod
-    def of(cls, grid_tenths: NDArray[np.int64], peaks: NDArray[np.int64], radius_mm: float) -> _Stamp:
+    def of(cls, grid_tenths: NDArray[np.int64], peaks: NDArray[np.int64], radius_mm: float, spacing: int) -> _Stamp:
         """Make the box for a grid, and look up where its peaks reach."""
         limit = squared_tenths(radius_mm)
-        reach = int(np.ceil(np.sqrt(limit))) // SPACING_TENTHS + 1
+        place = np.array([spacing**2, spacing, 1], dtype=np.int64)  # makes one number of a place within a cell
+        reach = int(np.ceil(np.sqrt(limit))) // spacing + 1
         margin = reach + 1
-        cells = grid_tenths // SPACING_TENTHS
+        cells = grid_tenths // spacing
         corner = cells.min(axis=0) - 2 * margin
         shape = cells.max(axis=0) + 2 * margin + 1 - corner
         strides = np.array([shape[1] * shape[2], shape[2], 1], dtype=np.int64)
-        residues, row = np.unique(peaks % SPACING_TENTHS @ _PLACE, return_inverse=True)
-        table, empty = _reached(residues, reach, limit, strides)
-        cell = peaks // SPACING_TENTHS - corner
+        residues, row = np.unique(peaks % spacing @ place, return_inverse=True)
+        table, empty = _reached(residues, reach, limit, strides, spacing)
+        cell = peaks // spacing - corner
         within = ((cell >= margin) & (cell < shape - margin)).all(axis=1) & ~empty[row.reshape(-1)]
         # From a corner of the margin, no offset reaches the grid.
         nowhere = int(np.full(3, margin, dtype=np.int64) @ strides)
@@ -169,7 +171,7 @@ class _Stamp:
 
 
 def _reached(
-    residues: NDArray[np.int64], reach: int, limit: int, strides: NDArray[np.int64]
+    residues: NDArray[np.int64], reach: int, limit: int, strides: NDArray[np.int64], spacing: int
 ) -> tuple[NDArray[np.int64], NDArray[np.bool_]]:
     """Return, for each place within a cell, the offsets of the cells in reach, and whether there are none."""
     span = np.arange(-reach, reach + 1)
@@ -177,8 +179,8 @@ def _reached(
     near = np.zeros((len(residues), len(steps)), dtype=bool)
     for start in range(0, len(residues), _RESIDUES):
         part = residues[start : start + _RESIDUES]
-        within = part[:, None] // _PLACE % SPACING_TENTHS
-        away = SPACING_TENTHS * steps[None] - within[:, None, :]
+        within = part[:, None] // np.array([spacing**2, spacing, 1]) % spacing
+        away = spacing * steps[None] - within[:, None, :]
         near[start : start + _RESIDUES] = (away**2).sum(axis=2) <= limit
     width = max(1, int(near.sum(axis=1).max())) if len(near) else 1
     order = np.argsort(~near, axis=1, kind="stable")[:, :width]

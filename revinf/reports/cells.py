@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import re
 import unicodedata
+from collections.abc import Collection
 
-__all__ = ["csv_cell", "markdown_cell", "one_line"]
+__all__ = ["csv_cell", "file_name", "markdown_cell", "one_line"]
 
 _FORMULA = ("=", "+", "-", "@", "\t", "\r")
 
@@ -59,3 +61,20 @@ def markdown_cell(text: str) -> str:
     escaped = escaped.replace("&", "&amp;").replace("<", "&lt;").replace(">", "&gt;")
     # A bare address would become a link.
     return escaped.replace("://", ":&#47;&#47;").replace("www.", "www&#46;").replace("@", "&#64;")
+
+
+def file_name(text: str, *, taken: Collection[str] = ()) -> str:
+    """Return a name for a file or folder: letters and digits, joined by hyphens; numbered where it is taken.
+
+    Examples
+    --------
+    >>> file_name("Theory of mind"), file_name("../a b", taken=["a-b"]), file_name("...")
+    ('theory-of-mind', 'a-b-2', 'term')
+    """
+    plain = unicodedata.normalize("NFKD", text).encode("ascii", "ignore").decode().lower()
+    stem = re.sub(r"[^a-z0-9]+", "-", plain).strip("-")[:60].strip("-") or "term"
+    name, number = stem, 1
+    while name in taken:
+        number += 1
+        name = f"{stem}-{number}"
+    return name

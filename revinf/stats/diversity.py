@@ -224,8 +224,8 @@ def diversity_intervals(
     level : float, probability, default 0.95
         Posterior probability that each interval holds.
     draws, seed : int, fixed
-        Number of random sets of rates, and their start: the same counts give the same interval. Left out, 4000, and
-        fewer, down to 500, for more than 250 categories: the more there are, the less the summaries vary.
+        Number of random sets of rates, and their start: equal counts give equal intervals. Left out, 4000, or down to
+        500 for more than 250 categories, whose summaries vary less.
 
     Returns
     -------
@@ -254,8 +254,7 @@ def diversity_intervals(
     tail = (1 - check_level(level)) / 2
     observed = shares(active, total)
     k, n = count_arrays(active, total)
-    if draws is None:
-        draws = max(500, min(4000, 1_000_000 // max(len(k), 1)))
+    draws = max(500, min(4000, 1_000_000 // max(len(k), 1))) if draws is None else draws
     if draws < 1:
         raise InvalidCountError(f"draws must be at least 1, but got {draws!r}; use 4000")
     if observed is None or len(k) < 2 or k.sum() < minimum_hits:

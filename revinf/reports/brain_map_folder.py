@@ -1,0 +1,142 @@
+"""The folder of a map: volumes, sidecar and picture, put in place as a whole."""
+
+from __future__ import annotations
+
+import json
+import os
+import shutil
+import tempfile
+from collections.abc import Callable, Iterable
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from revinf.exceptions import InputFileError
+from revinf.reports.brain_map_figure import write_brain_map_figure
+from revinf.reports.cells import file_name
+
+if TYPE_CHECKING:
+    from revinf.evidence.brain_map import BrainMap
+
+__all__ = ["write_brain_map", "write_brain_maps"]
+
+_MARK = "map.json"
+
+
+def write_brain_map(found: BrainMap, out: str | Path) -> list[str]:
+    """Write one map.
+
+    Parameters
+    ----------
+    found : BrainMap
+        From `revinf.map_term`.
+    out : path
+        A folder; an older map there is replaced as a whole.
+
+    Returns
+    -------
+    list of str
+        Names of the files.
+
+    Raises
+    ------
+    InputFileError
+        If the target is something else than a map, or cannot be written.
+    """
+    return _written(Path(os.path.realpath(out)), lambda folder: _fill(found, folder))
+
+
+def write_brain_maps(
+    maps: Iterable[tuple[int, int, BrainMap]],
+    out: str | Path,
+    *,
+    progress: Callable[[int, int], None] | None = None,
+) -> list[str]:
+    """Write a map a term into sub-folders, one after another.
+
+    Parameters
+    ----------
+    maps : iterable
+        From `revinf.map_terms`.
+    out : path
+        A folder; older maps there are replaced as a whole.
+    progress : callable, optional
+        Told how many terms are done, of how many.
+
+    Returns
+    -------
+    list of str
+        Names of the sub-folders.
+
+    Raises
+    ------
+    InputFileError
+        If the target is something else, or cannot be written.
+    """
+
+    def fill(folder: Path) -> None:
+        names: list[str] = []
+        for done, of, found in maps:
+            name = file_name(found.term, taken=names)
+            (folder / name).mkdir()
+            _fill(found, folder / name)
+            names.append(name)
+            if progress is not None:
+                progress(done, of)
+        (folder / _MARK).write_text(json.dumps({"schema": "revinf/maps/1", "maps": names}, indent=1) + "\n")
+
+    return _written(Path(os.path.realpath(out)), fill)
+
+
+def _fill(found: BrainMap, folder: Path) -> None:
+    """Write the files of one map into a folder."""
+    for name, content in found.volumes():
+        (folder / name).write_bytes(content)
+    text = json.dumps(found.to_dict(), indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+    (folder / _MARK).write_text(text, encoding="utf-8")
+    write_brain_map_figure(found, folder / "map.png")
+
+
+def _written(target: Path, fill: Callable[[Path], None]) -> list[str]:
+    """Fill a folder beside the target and rename it into place."""
+    if target.exists() and not _may_replace(target):
+        raise InputFileError("something that is not a map stands here; give --out another name", path=target)
+    beside: Path | None = None
+    try:
+        target.parent.mkdir(parents=True, exist_ok=True)
+        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.map-", dir=target.parent))
+        fill(beside)
+        mask = os.umask(0)
+        os.umask(mask)
+        beside.chmod(0o777 & ~mask)
+        names = sorted(path.name for path in beside.iterdir())
+        if target.exists():
+            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.map-", dir=target.parent))
+            target.rename(old / "old")
+            beside.rename(target)
+            shutil.rmtree(old)
+        else:
+            beside.rename(target)
+    except OSError as error:
+        raise InputFileError(
+            f"cannot be written ({error.strerror or error}); choose another place with --out", path=target
+        ) from None
+    finally:
+        if beside is not None and beside.exists():
+            shutil.rmtree(beside, ignore_errors=True)
+    return names
+
+
+def _may_replace(target: Path) -> bool:
+    """Tell whether a folder is empty or a map of ours and nothing else."""
+    if not target.is_dir():
+        return False
+    names = [path.name for path in target.iterdir()]
+    if not names:
+        return True
+    try:
+        schema = str(json.loads((target / _MARK).read_text(encoding="utf-8"))["schema"])
+    except (OSError, ValueError, KeyError, TypeError, RecursionError):
+        return False
+    if schema == "revinf/maps/1":
+        return all((target / name).is_dir() or name == _MARK for name in names)
+    return schema == "revinf/map/1" and all(name.endswith(".nii.gz") or name in (_MARK, "map.png") for name in names)

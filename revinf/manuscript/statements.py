@@ -8,19 +8,15 @@ open), "reported" (the step of others), "background" (a premise), "forward" (the
 from __future__ import annotations
 
 import re
-from collections.abc import Sequence
-from itertools import pairwise
 
+from revinf.manuscript.antecedents import antecedent, place_groups
 from revinf.manuscript.cues import CueMention
 from revinf.manuscript.inference import Inference, Reading, Statement, StatementKind
-from revinf.manuscript.places import PlaceMention
 from revinf.manuscript.processes import ProcessMention
 from revinf.manuscript.statement_patterns import (
     ACTIVITY,
     ANAPHOR,
-    CONTRASTED,
     DURING,
-    JOINT,
     LABEL_OF,
     NEGATOR,
     SELF,
@@ -28,8 +24,12 @@ from revinf.manuscript.statement_patterns import (
     SUBJECT,
     TASK_NOUN,
 )
+from revinf.manuscript.unlisted import named_after
 
 __all__ = ["read_statement"]
+
+
+_LEAD = 12  # letters before a cue that opens its sentence: "Highly", "Also,"
 
 
 def read_statement(sentence: Reading, before: Reading | None = None) -> Statement:
@@ -49,11 +49,11 @@ def read_statement(sentence: Reading, before: Reading | None = None) -> Statemen
 
     Notes
     -----
-    Where in doubt it says claim: who reads the list strikes out a false row in a second and never sees a
-    missed one.
+    Where in doubt it says claim: a false row is struck out in a second, a missed one is never seen.
     """
     found: list[Inference] = []
     declined = reported = False
+    refused = _refused_from(sentence)
     for cue in sentence.cues:
         steps = _steps(sentence, before, cue)
         if not steps:
@@ -62,8 +62,9 @@ def read_statement(sentence: Reading, before: Reading | None = None) -> Statemen
             continue
         if _is_reported(sentence, cue):
             reported = True
-        elif _is_declined(sentence, cue):
-            declined = True
+        elif cue.start > refused or _is_declined(sentence, cue):
+            # A negation inside a reason ("because nobody moved, ...") declines nothing else.
+            declined |= cue.direction != "because"
         else:
             found += steps
     if declined and not any(_is_stronger(sentence, item) for item in found):
@@ -96,13 +97,16 @@ def _other_kind(sentence: Reading) -> StatementKind:
 def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[Inference]:
     """Return the steps that a cue makes, whatever else the sentence says of them."""
     if cue.direction in ("reverse", "therefore", "conclude"):
-        places, from_before = _antecedent(sentence, before, cue)
+        fronted = _fronted(sentence, cue)
+        if fronted:
+            return fronted
+        places, from_before = antecedent(sentence, before, cue)
         processes = _after(sentence, cue.end)
         if cue.direction == "therefore" and not _is_assertion(sentence, cue):
             return []
     elif cue.direction == "backwards":
         places = [place for place in sentence.places if place.start >= cue.end]
-        places = _groups(sentence.text, places)[0] if places else []
+        places = place_groups(sentence.text, places)[0] if places else []
         from_before = False
         if not places and before is not None and ANAPHOR.search(sentence.text[cue.end :]):
             places, from_before = list(before.places), True
@@ -114,6 +118,9 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
     if not places:
         return []
     processes = [process for process in processes if process.listed] or processes
+    if not processes and cue.direction in ("reverse", "conclude"):
+        unnamed = named_after(sentence.text, cue.end)
+        processes = [unnamed] if unnamed is not None and not _names_place(sentence, unnamed) else []
     hedged = _is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=from_before, cue=cue, hedged=hedged)
@@ -121,30 +128,29 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
     ]
 
 
-def _antecedent(sentence: Reading, before: Reading | None, cue: CueMention) -> tuple[list[PlaceMention], bool]:
-    """Return the places whose activity a cue starts from, and whether they stand in the sentence before."""
-    here = [place for place in sentence.places if place.start < cue.end]
-    if here:
-        return _groups(sentence.text, here)[-1], False
-    if cue.direction == "conclude" and sentence.places and ACTIVITY.search(sentence.text):
-        return _groups(sentence.text, sentence.places)[-1], False
-    if before is None or not before.places or not ACTIVITY.search(before.text + sentence.text):
-        return [], False
-    points_back = ANAPHOR.search(sentence.text[: cue.end]) or cue.direction in ("conclude", "therefore")
-    return (_groups(before.text, before.places)[0], True) if points_back else ([], False)
+def _fronted(sentence: Reading, cue: CueMention) -> list[Inference]:
+    """Return the steps of "Consistent with fear, the amygdala responded": cue and process stand before the place."""
+    comma = re.search(r",\s", sentence.text[cue.end :])
+    if cue.start > _LEAD or cue.direction != "reverse" or comma is None:
+        return []
+    end = cue.end + comma.start()
+    processes = [process for process in sentence.processes if cue.end <= process.start < end]
+    processes = [process for process in processes if process.listed] or processes
+    places = [place for place in sentence.places if place.start >= end]
+    if not processes or not places or any(place.start < end for place in sentence.places):
+        return []
+    if not ACTIVITY.search(sentence.text[end:]):
+        return []
+    chosen, hedged = tuple(place_groups(sentence.text, places)[0]), _is_hedged(sentence, cue)
+    return [
+        Inference(process=process, places=chosen, from_before=False, cue=cue, hedged=hedged)
+        for process in _task_free(sentence, processes)
+    ]
 
 
-def _groups(text: str, places: Sequence[PlaceMention]) -> list[list[PlaceMention]]:
-    """Return places in groups: those that an "and" or a comma joins belong together; contrasted ones fall away."""
-    kept = [place for place in places if not CONTRASTED.search(text[: place.start])] or list(places)
-    groups: list[list[PlaceMention]] = [[kept[0]]]
-    for earlier, later in pairwise(kept):
-        between = re.sub(r"\([^)]*\)|\[[^\]]*\]", " ", text[earlier.end : later.start])
-        if later.start < earlier.end or JOINT.fullmatch(between):
-            groups[-1].append(later)
-        else:
-            groups.append([later])
-    return groups
+def _names_place(sentence: Reading, words: ProcessMention) -> bool:
+    """Tell whether words hold the name of a place: then the sentence speaks of it, not of a process."""
+    return any(place.start < words.end and words.start < place.end for place in sentence.places)
 
 
 def _after(sentence: Reading, start: int) -> list[ProcessMention]:
@@ -254,6 +260,12 @@ def _last_negation(lead: str) -> str:
         re.finditer(r"\b(?:not|cannot|never|no|nor|neither|hardly|scarcely|without)\b|n't\b", lead, re.IGNORECASE)
     )
     return lead[found[-1].start() :] if found else ""
+
+
+def _refused_from(sentence: Reading) -> float:
+    """Return where a refused conclusion begins ("a mistake to conclude that ..."): all it would conclude is refused."""
+    concluding = [cue for cue in sentence.cues if cue.direction == "conclude" and _is_declined(sentence, cue)]
+    return min((cue.start for cue in concluding), default=float("inf"))
 
 
 def _is_reported(sentence: Reading, cue: CueMention) -> bool:

@@ -11,7 +11,7 @@ import re
 from revinf.manuscript.phrases import Token
 from revinf.manuscript.processes import ProcessMention
 
-__all__ = ["unlisted_processes"]
+__all__ = ["named_after", "unlisted_processes"]
 
 _HEADS_WORDS = """
     perception processing memory memories learning control regulation imagery attention monitoring detection
@@ -64,7 +64,8 @@ _STOP = frozenset(_STOP_WORDS.split())
 
 
 _VERB = re.compile(
-    r"(?:suggest|indicat|impl[iy]|reflect|show|reveal|signal|demonstrat|point|mean|meant|evok|engag|involv|support|requir|"
+    r"(?:suggest|indicat|impl[iy]|reflect|show|reveal|signal|demonstrat|point|mean|meant|evok|engag|involv|"
+    r"support|requir|"
     r"induc|activat|index|denot|prov[ei]|confirm|betray|convey|mirror|express|document|betoken|trigger|recruit)\w*$"
 )
 
@@ -108,6 +109,81 @@ def unlisted_processes(text: str, words: list[Token]) -> list[ProcessMention]:
             if not any(mention.start < end and start < mention.end for mention in found):
                 found.append(ProcessMention(term=match["what"], start=start, end=end, listed=False))
     return sorted(found, key=lambda mention: mention.start)
+
+
+def named_after(text: str, start: int) -> ProcessMention | None:
+    """Return what stands right after a cue, where no process has a name there.
+
+    "... suggests that readers found the menu repulsive": a reader sees a claim, whatever the process is called.
+
+    Parameters
+    ----------
+    text : str
+        The sentence.
+    start : int
+        End of the cue.
+
+    Returns
+    -------
+    ProcessMention or None
+        The words of what people did or felt, or the noun after the cue; None where it speaks of the study itself.
+
+    Examples
+    --------
+    >>> named_after("It suggests that readers found the menu repulsive.", 11).term
+    'found the menu repulsive'
+    >>> named_after("It suggests an effect of sample size.", 11) is None
+    True
+    """
+    for pattern in (_PEOPLE, _NOUN):
+        found = pattern.match(text, start)
+        if found is None:
+            continue
+        words = found["what"].strip()
+        if _STUDY.search(words) or not re.search(r"[A-Za-z]{3}", words):
+            return None
+        return ProcessMention(term=words.lower(), start=found.start("what"), end=found.end("what"), listed=False)
+    return None
+
+
+_WHO = (
+    r"(?:participants?|volunteers?|viewers?|listeners?|readers?|subjects?|observers?|players?|speakers?|"
+    r"patients?|people|"
+    r"persons?|children|adults|drivers?|sleepers?|musicians?|students?|learners?|smokers?|buyers?|"
+    r"travell?ers?|walkers?|"
+    r"they|individuals?|respondents?|singers?|dancers?|climbers?|gamblers?|tasters?|parents?|mothers?|fathers?|"
+    r"the brain|men|women|infants?|users?|customers?|visitors?|guests?|members?|athletes?|pilots?)"
+)
+_PEOPLE = re.compile(
+    rf"\W*(?:that\s+|how\s+)?(?:even\s+|also\s+|these\s+|the\s+|our\s+|most\s+|many\s+|some\s+|all\s+)*"
+    rf"(?:[\w'’-]+\s+){{0,2}}?{_WHO}\s+(?:must\s+have\s+|may\s+have\s+|had\s+|have\s+|were\s+|was\s+|did\s+|"
+    rf"indeed\s+|"
+    r"also\s+|already\s+|still\s+|actually\s+|spontaneously\s+|implicitly\s+|covertly\s+|automatically\s+)*"
+    r"(?P<what>[\w'’-]+(?:\s+[\w'’-]+){0,5})",
+    re.IGNORECASE,
+)
+_NOUN = re.compile(
+    r"\W*(?:of\s+|for\s+|to\s+|with\s+|at\s+)?(?:a\s+|an\s+|the\s+|some\s+|their\s+|such\s+|more\s+|"
+    r"greater\s+|increased\s+|"
+    r"heightened\s+|enhanced\s+|covert\s+|spontaneous\s+|automatic\s+|implicit\s+|continued\s+|sustained\s+)*"
+    r"(?:(?:engagement|recruitment|presence|use|involvement|deployment|operation|occurrence|form|kind|act|"
+    r"process|degree)"
+    r"\s+(?:of|in)\s+(?:a\s+|an\s+|the\s+)?)?(?P<what>(?!that\b|it\b|this\b|these\b|there\b|how\b|"
+    r"whether\b)[a-z][\w'’-]+"
+    r"(?:\s+(?!and\b|or\b|but\b|in\b|during\b|when\b|while\b|by\b|from\b|was\b|were\b|is\b|are\b)[\w'’-]+){0,3})"
+)
+_STUDY = re.compile(
+    r"\b(?:effects?|differences?|sample|size|sizes|power|noise|arte?facts?|motion correction|thresholds?|"
+    r"variance|anatomy|"
+    r"groups?|methods?|smoothing|scanner|contrasts?|results?|findings?|data|hypothes\w+|models?|"
+    r"predictions? of|studies|study|"
+    r"literature|regions?|areas?|cort\w+|gyr\w+|network|networks|activ\w+|respon\w+|signal\w*|cluster\w*|peak\w*|"
+    r"connectivity|role|roles|function|functions|importance|interactions?|correlations?|replicat\w+|caution|"
+    r"view|account|"
+    r"notion|idea|possibility|interpretation|previous|earlier|prior work|statistic\w*|significan\w+|future|"
+    r"further|limit\w*)\b",
+    re.IGNORECASE,
+)
 
 
 def _modifies(word: Token) -> bool:

@@ -103,7 +103,10 @@ def place_of(name: str | None) -> str:
 
 def evaluate(part: str) -> dict[str, Score]:
     """Return the scores of a part: claims, coordinates, their places, and links of claims to coordinates."""
-    scores = {name: Score() for name in ("claims", "coordinates", "places of coordinates", "links")}
+    scores = {
+        name: Score()
+        for name in ("claims (sentence)", "claims (process)", "coordinates", "places of coordinates", "links")
+    }
     for paragraph in paragraphs():
         if paragraph["part"] != part:
             continue
@@ -115,7 +118,8 @@ def evaluate(part: str) -> dict[str, Score]:
             text = f"[{paragraph['id']}] {sentence['text']}"
             labels = {process_of(claim["process"]) for claim in sentence["claims"]}
             terms = {claim.id: called(claim.term, claim.listed, labels) for claim in claims}
-            scores["claims"].add(labels, set(terms.values()), text)
+            scores["claims (sentence)"].add(["claim"] * bool(labels), ["claim"] * bool(claims), text)
+            scores["claims (process)"].add(labels, set(terms.values()), text)
             triples = [triple for at in own for triple in found.sentences[at].triples]
             wanted = [tuple(map(float, triple["xyz"])) for triple in sentence["triples"]]
             scores["coordinates"].add(wanted, [triple.xyz for triple in triples], text)

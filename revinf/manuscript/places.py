@@ -150,15 +150,19 @@ def find_places(text: str, words: list[Token], defined: Mapping[str, str] | None
     return mentions
 
 
+_ACTIVE_BESIDE = re.compile(
+    r"\s*(?:(?:was|were|is|became|showed|stayed|remained)\s+(?:more\s+|also\s+|strongly\s+)?)?"
+    r"(?:activ|respon|signal|recruit|engage|peak|cluster|deactiv|[(\[]\s*[-+\u2212\u2013]?\d)"
+)
+"""What follows an abbreviation of a place, not a word that happens to look like one."""
+
+
 def _trusted(text: str, words: list[Token], hit: Found | None) -> Found | None:
     """Return an abbreviation unless it is so short that it may mean anything."""
     if hit is None or hit.end - hit.start > 2 or re.match(r"V\d", text[hit.start : hit.end]):
         return hit
     before = words[hit.first - 1].text.lower() if hit.first else ""
-    after = text[hit.end : hit.end + 30]
-    beside = re.match(
-        r"\s*(?:activ|respon|signal|recruit|engage|peak|cluster|deactiv|[(\[]\s*[-+\u2212\u2013]?\d)", after
-    )
+    beside = _ACTIVE_BESIDE.match(text, hit.end)
     return hit if before in _SIDES or beside else None
 
 

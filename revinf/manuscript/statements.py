@@ -291,9 +291,13 @@ def _is_premise(sentence: Reading, cue: CueMention) -> bool:
 
 
 def _once(found: list[Inference]) -> tuple[Inference, ...]:
-    """Keep one step a process, the one with the nearest cue; a hedge of any counts."""
+    """Keep one step a process, the one with the nearest cue; of wordings within each other, the shortest."""
     best: dict[str, Inference] = {}
+    spans = [(item.process.start, item.process.end) for item in found]
     for item in found:
+        own = (item.process.start, item.process.end)
+        if any(own != span and own[0] <= span[0] and span[1] <= own[1] for span in spans):
+            continue
         known = best.get(item.process.term)
         if known is None or abs(item.process.start - item.cue.end) < abs(known.process.start - known.cue.end):
             best[item.process.term] = item

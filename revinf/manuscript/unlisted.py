@@ -44,7 +44,7 @@ _LOOSE = frozenset(_LOOSE_WORDS.split())
 _FELT = re.compile(
     r"\b(?:felt|feel|feeling|experienced|experience|experiencing|sensed|became|were|grew)\s+"
     r"(?:(?:a|an|some|the|more|very|rather|quite|strong|strongly|deep|deeply|intense|intensely|genuinely|indeed)\s+)*"
-    r"(?P<what>[a-z][a-z-]+(?:al|ed|ic|ous|ful|ive|ing|ious|less|ant|ent|gia|ness|ment|ity|tion|ion|ry|ief|"
+    r"(?P<what>[a-z][a-z-]+(?:al|ed|ic|ous|ful|ive|ious|less|ant|ent|gia|ness|ment|ity|tion|ion|ry|ief|"
     r"ror|ror|dom|ship|thy))\b"
 )
 _STATE_OF = re.compile(
@@ -135,7 +135,7 @@ def named_after(text: str, start: int) -> ProcessMention | None:
     >>> named_after("It suggests an effect of sample size.", 11) is None
     True
     """
-    for pattern in (_PEOPLE, _NOUN):
+    for pattern in (_PEOPLE, _CLAUSE, _NOUN):
         found = pattern.match(text, start)
         if found is None:
             continue
@@ -151,7 +151,8 @@ _WHO = (
     r"patients?|people|"
     r"persons?|children|adults|drivers?|sleepers?|musicians?|students?|learners?|smokers?|buyers?|"
     r"travell?ers?|walkers?|"
-    r"they|individuals?|respondents?|singers?|dancers?|climbers?|gamblers?|tasters?|parents?|mothers?|fathers?|"
+    r"they|individuals?|respondents?|audiences?|everyone|everybody|crowd|commuters?|investors?|gamblers?|"
+    r"singers?|dancers?|climbers?|tasters?|parents?|mothers?|fathers?|"
     r"the brain|men|women|infants?|users?|customers?|visitors?|guests?|members?|athletes?|pilots?)"
 )
 _PEOPLE = re.compile(
@@ -161,6 +162,9 @@ _PEOPLE = re.compile(
     r"also\s+|already\s+|still\s+|actually\s+|spontaneously\s+|implicitly\s+|covertly\s+|automatically\s+)*"
     r"(?P<what>[\w'’-]+(?:\s+[\w'’-]+){0,5})",
     re.IGNORECASE,
+)
+_CLAUSE = re.compile(
+    r"(?:\W*(?:that|how)\s+|(?<=\bthat)\s+|(?<=\bhow)\s+)(?P<what>[\w'’-]+(?:\s+[\w'’-]+){1,7})", re.IGNORECASE
 )
 _NOUN = re.compile(
     r"\W*(?:of\s+|for\s+|to\s+|with\s+|at\s+)?(?:a\s+|an\s+|the\s+|some\s+|their\s+|such\s+|more\s+|"
@@ -181,7 +185,7 @@ _STUDY = re.compile(
     r"connectivity|role|roles|function|functions|importance|interactions?|correlations?|replicat\w+|caution|"
     r"view|account|"
     r"notion|idea|possibility|interpretation|previous|earlier|prior work|statistic\w*|significan\w+|future|"
-    r"further|limit\w*)\b",
+    r"further|limit\w*|from the brain)\b",
     re.IGNORECASE,
 )
 

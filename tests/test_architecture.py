@@ -48,7 +48,7 @@ OUTSIDE = {
     "evidence": {"numpy", "pandas"},
     "calibration": {"numpy", "joblib"},
     "manuscript": {"docx", "lxml", "pylatexenc", "pypdfium2"},
-    "reports": {"rich", "matplotlib", "jinja2", "markupsafe"},
+    "reports": {"rich", "matplotlib", "jinja2", "markupsafe", "joblib"},
     "cli": {"typer"},
     "__init__": set(),
     "__main__": set(),

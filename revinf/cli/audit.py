@@ -97,7 +97,8 @@ def audit(
             listed, choose_source(literature, table, os.environ, without or ()), choices, progress=progress
         )
     command = reproducing_command(sys.argv[1:])
-    names = write_audit_folder(result, out, readers=readers, command=command)
+    with counting("drawing slides" if "presenter" in readers else "writing the report") as progress:
+        names = write_audit_folder(result, out, readers=readers, command=command, progress=progress)
     show(*audit_screen(result, str(out), names, width=screen_width()))
     failing = fails_gate(result, gate) if gate is not None else []
     if failing:

@@ -13,13 +13,12 @@ from revinf.manuscript.antecedents import antecedent, place_groups
 from revinf.manuscript.cues import CueMention
 from revinf.manuscript.inference import Inference, Reading, Statement, StatementKind
 from revinf.manuscript.processes import ProcessMention
+from revinf.manuscript.stance import is_declined, is_hedged, is_premise, is_reported, refused_from
 from revinf.manuscript.statement_patterns import (
     ACTIVITY,
     ANAPHOR,
     DURING,
     LABEL_OF,
-    NEGATOR,
-    SELF,
     STOP,
     SUBJECT,
     TASK_NOUN,
@@ -53,16 +52,16 @@ def read_statement(sentence: Reading, before: Reading | None = None) -> Statemen
     """
     found: list[Inference] = []
     declined = reported = False
-    refused = _refused_from(sentence)
+    refused = refused_from(sentence)
     for cue in sentence.cues:
         steps = _steps(sentence, before, cue)
         if not steps:
             continue
-        if _is_premise(sentence, cue):
+        if is_premise(sentence, cue):
             continue
-        if _is_reported(sentence, cue):
+        if is_reported(sentence, cue):
             reported = True
-        elif cue.start > refused or _is_declined(sentence, cue):
+        elif cue.start > refused or is_declined(sentence, cue):
             # A negation inside a reason ("because nobody moved, ...") declines nothing else.
             declined |= cue.direction != "because"
         else:
@@ -121,7 +120,7 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
     if not processes and cue.direction in ("reverse", "conclude"):
         unnamed = named_after(sentence.text, cue.end)
         processes = [unnamed] if unnamed is not None and not _names_place(sentence, unnamed) else []
-    hedged = _is_hedged(sentence, cue)
+    hedged = is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=from_before, cue=cue, hedged=hedged)
         for process in processes
@@ -141,7 +140,7 @@ def _fronted(sentence: Reading, cue: CueMention) -> list[Inference]:
         return []
     if not ACTIVITY.search(sentence.text[end:]):
         return []
-    chosen, hedged = tuple(place_groups(sentence.text, places)[0]), _is_hedged(sentence, cue)
+    chosen, hedged = tuple(place_groups(sentence.text, places)[0]), is_hedged(sentence, cue)
     return [
         Inference(process=process, places=chosen, from_before=False, cue=cue, hedged=hedged)
         for process in _task_free(sentence, processes)
@@ -226,68 +225,11 @@ def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
         return []
     if not at_start and any(place.end <= cue.start for place in sentence.places):
         return []
-    hedged = _is_hedged(sentence, cue)
+    hedged = is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=False, cue=cue, hedged=hedged)
         for process in _task_free(sentence, [process for process in outside if process.listed] or outside)
     ]
-
-
-def _is_hedged(sentence: Reading, cue: CueMention) -> bool:
-    """Tell whether a step is made with reserve."""
-    hedges = [other for other in sentence.cues if other.direction == "hedge"]
-    return cue.strength == "hedged" or any(abs(other.start - cue.start) < 60 for other in hedges)
-
-
-def _is_declined(sentence: Reading, cue: CueMention) -> bool:
-    """Tell whether a step is denied, doubted or asked."""
-    if sentence.text.rstrip().endswith("?"):
-        return True
-    for other in sentence.cues:
-        if other.direction == "open" and other.start <= cue.end:
-            return True
-        if other.direction == "negation" and other.start <= cue.end and cue.start - other.end < 45:
-            between = sentence.text[other.end : cue.start] if other.end < cue.start else ""
-            if not re.search(r"[,;:]\s|\bbut\b", between):
-                return True
-    lead = sentence.text[max(0, cue.start - 40) : cue.start]
-    return bool(NEGATOR.search(lead)) and not re.search(r"[,;:]|\bbut\b|not only", _last_negation(lead))
-
-
-def _last_negation(lead: str) -> str:
-    """Return what follows the last negation of a text, with it."""
-    found = list(
-        re.finditer(r"\b(?:not|cannot|never|no|nor|neither|hardly|scarcely|without)\b|n't\b", lead, re.IGNORECASE)
-    )
-    return lead[found[-1].start() :] if found else ""
-
-
-def _refused_from(sentence: Reading) -> float:
-    """Return where a refused conclusion begins ("a mistake to conclude that ..."): all it would conclude is refused."""
-    concluding = [cue for cue in sentence.cues if cue.direction == "conclude" and _is_declined(sentence, cue)]
-    return min((cue.start for cue in concluding), default=float("inf"))
-
-
-def _is_reported(sentence: Reading, cue: CueMention) -> bool:
-    """Tell whether a step is the step of others."""
-    for other in sentence.cues:
-        if other.direction != "report" or other.start > cue.end:
-            continue
-        if other.end < cue.start and SELF.search(sentence.text[other.end : cue.start]):
-            continue
-        if not SELF.search(sentence.text[max(0, other.start - 12) : other.end]):
-            return True
-    return False
-
-
-def _is_premise(sentence: Reading, cue: CueMention) -> bool:
-    """Tell whether a cue only stands inside a general statement about the place."""
-    for other in sentence.cues:
-        if other.direction != "premise" or other.start > cue.start:
-            continue
-        if other.start <= cue.start <= other.end or 0 <= cue.start - other.end <= 12:
-            return True
-    return False
 
 
 def _once(found: list[Inference]) -> tuple[Inference, ...]:

@@ -6,6 +6,7 @@ import os
 import re
 import shutil
 import tempfile
+from collections.abc import Callable
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -24,7 +25,14 @@ _MARK = ".revinf-audit"
 """An empty file that says that a folder is an audit of ours and may be replaced."""
 
 
-def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...] = (), command: str = "") -> list[str]:
+def write_audit_folder(
+    audit: Audit,
+    out: str | Path,
+    *,
+    readers: tuple[str, ...] = (),
+    command: str = "",
+    progress: Callable[[int, int], None] | None = None,
+) -> list[str]:
     """Write report, tables and what each reader asked for.
 
     Parameters
@@ -37,6 +45,8 @@ def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...
         Of "author", "reviewer", "presenter".
     command : str, optional
         What reproduces it.
+    progress : callable, optional
+        Told how many slides are drawn, of how many; the rest takes no time.
 
     Returns
     -------
@@ -65,7 +75,7 @@ def write_audit_folder(audit: Audit, out: str | Path, *, readers: tuple[str, ...
         target.parent.mkdir(parents=True, exist_ok=True)
         _sweep(target)
         beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
-        names = _fill(audit, beside, readers, command)
+        names = _fill(audit, beside, readers, command, progress)
         beside.chmod(0o777 & ~_umask())  # as any folder that the user makes; until now it was private
         if target.exists():
             old = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
@@ -126,7 +136,13 @@ def _escaped(name: str) -> str:
     return "".join(f"[{character}]" if character in "*?[" else character for character in name)
 
 
-def _fill(audit: Audit, folder: Path, readers: tuple[str, ...], command: str) -> list[str]:
+def _fill(
+    audit: Audit,
+    folder: Path,
+    readers: tuple[str, ...],
+    command: str,
+    progress: Callable[[int, int], None] | None,
+) -> list[str]:
     """Write every file into a folder and return their names, sorted."""
     texts = {
         "report.html": html_text(audit, command=command),
@@ -143,7 +159,7 @@ def _fill(audit: Audit, folder: Path, readers: tuple[str, ...], command: str) ->
     if "presenter" in readers:
         from revinf.reports.slides import write_slides
 
-        write_slides(audit, folder)
+        write_slides(audit, folder, progress=progress)
     names = sorted(path.name for path in folder.iterdir())
     (folder / _MARK).touch()
     return names

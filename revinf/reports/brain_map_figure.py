@@ -5,7 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from revinf.reports.cells import one_line
+from revinf.reports.drawn_text import drawable
 from revinf.reports.figures import INK, new_figure, write_figure
 from revinf.reports.numbers import count, probability
 
@@ -64,8 +64,8 @@ def write_brain_map_figure(found: BrainMap, path: str | Path) -> Path:
     facts = found.literature
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"{one_line(found.term)[:60]}: {count(found.n_term)} of {count(found.n_term + found.n_other)} "
-        f"{facts.study_is}, {facts.name[:40]}{invented}\n"
+        f"{drawable(found.term[:60])}: {count(found.n_term)} of {count(found.n_term + found.n_other)} "
+        f"{drawable(facts.study_is)}, {drawable(facts.name[:40])}{invented}\n"
         f"spheres of {found.radius_mm:g} mm every {found.spacing_mm:g} mm of grey matter; "
         f"left is left; highest posterior {probability(float(found.values['posterior'].max()))} at prior "
         f"{probability(found.prior)}",

@@ -5,7 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from revinf.reports.cells import one_line
+from revinf.reports.drawn_text import drawable
 from revinf.reports.figures import ACCENT, INK, MUTED, new_figure, write_figure
 from revinf.reports.numbers import count
 
@@ -50,7 +50,8 @@ def write_calibration_figure(found: Calibration, path: str | Path) -> Path:
     facts = found.literature
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"How far can this literature be trusted?  {facts.name}: {count(facts.n_studies)} {facts.study_is}{invented}",
+        "How far can this literature be trusted?  "
+        + drawable(f"{facts.name}: {count(facts.n_studies)} {facts.study_is}{invented}"),
         fontsize=11,
         x=0.01,
         ha="left",
@@ -102,7 +103,7 @@ def _skills(axis: Any, found: Calibration) -> None:
         axis.plot(shown, heights, marker, color=colour, mfc=fill, ms=5.5, label=name, clip_on=False)
     axis.axvline(0, color=INK, lw=1)
     axis.set_xlim(lowest - 0.05, 0.6)
-    axis.set_yticks(list(heights), [f"{one_line(term.term)[:36]} ({term.n_studies})" for term in terms], fontsize=8.5)
+    axis.set_yticks(list(heights), [f"{drawable(term.term[:36])} ({term.n_studies})" for term in terms], fontsize=8.5)
     axis.set_ylim(len(terms) - 0.4, -0.6)
     axis.set_xlabel("Brier skill over the base rate (below −1 at the edge)", fontsize=9)
     axis.legend(fontsize=8, frameon=False, loc="upper center", bbox_to_anchor=(0.5, 1.1), ncols=3)

@@ -5,6 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from revinf.reports.drawn_text import drawable
 from revinf.reports.figures import ACCENT, INK, MUTED, new_figure, ratio_axis, write_figure
 from revinf.reports.numbers import coordinates, count, percent
 
@@ -43,7 +44,7 @@ def write_profile_figure(profile: Profile, path: str | Path) -> Path:
         rates.plot([row.rate.estimate], [height], "o", color=ACCENT, ms=5)
         rates.plot([row.shrunk_rate], [height], "|", color=INK, ms=10, mew=1.6)
         _draw_ratio(ratios, height, row)
-    labels = [f"{row.term}  {count(row.counts.term_active)}/{count(row.counts.term_total)}" for row in rows]
+    labels = [f"{drawable(row.term)}  {count(row.counts.term_active)}/{count(row.counts.term_total)}" for row in rows]
     rates.set_yticks(range(len(rows)), labels, fontsize=8.5)
     rates.set_xlabel(f"P(active here | process), {percent(profile.level)} interval\n● rate   | shrunk rate", fontsize=9)
     rates.set_xlim(0, max([0.05, *(row.rate.high for row in rows)]) * 1.05)
@@ -54,10 +55,11 @@ def write_profile_figure(profile: Profile, path: str | Path) -> Path:
         axis.set_ylim(len(rows) - 0.4, -0.6)
     facts = profile.literature
     points = " and ".join(coordinates(peak) for peak in profile.peaks)
-    where = f"{points} mm MNI152, within {profile.radius_mm:g} mm" if points else profile.place.words
+    where = f"{points} mm MNI152, within {profile.radius_mm:g} mm" if points else drawable(profile.place.words)
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"{where}: {count(profile.hits)} of {count(facts.n_studies)} {facts.study_is} active\n{facts.name}{invented}",
+        f"{where}: {count(profile.hits)} of {count(facts.n_studies)} {drawable(facts.study_is)} active\n"
+        f"{drawable(facts.name)}{invented}",
         fontsize=10,
         x=0.01,
         ha="left",

@@ -5,6 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from revinf.reports.drawn_text import drawable
 from revinf.reports.figures import ACCENT, MUTED, new_figure, ratio_axis, write_figure
 from revinf.reports.numbers import coordinates, count, interval, percent, ratio
 
@@ -47,7 +48,7 @@ def write_robustness_figure(assessment: Assessment, path: str | Path) -> Path:
         if group is not None and name != group:
             height += 0.6
         group = name
-        labels.append(f"{name}: {setting}" if setting else name)
+        labels.append(drawable(f"{name}: {setting}" if setting else name))
         heights.append(height)
         _draw_row(axis, height, value, holds)
         height += 1
@@ -64,13 +65,15 @@ def write_robustness_figure(assessment: Assessment, path: str | Path) -> Path:
     )
     claim, facts = assessment.claim, assessment.literature
     where = " and ".join(coordinates(peak) for peak in claim.peaks)
-    where = f"{where} mm {claim.space}" if where else assessment.place.words
+    where = f"{where} mm {claim.space}" if where else drawable(assessment.place.words)
     if claim.absent:
         where = f"no activity at {where}"
     invented = "   INVENTED DATA" if facts.invented else ""
     figure.suptitle(
-        f"Does the answer hold?  {claim.term}, {where}\n"
-        f"{facts.name}: {count(facts.n_studies)} {facts.study_is}; as asked {interval(base, ratio)}{invented}",
+        f"Does the answer hold?  {drawable(claim.term)}, {where}\n"
+        + drawable(
+            f"{facts.name}: {count(facts.n_studies)} {facts.study_is}; as asked {interval(base, ratio)}{invented}"
+        ),
         fontsize=10,
         x=0.01,
         ha="left",

@@ -15,33 +15,27 @@ for another's: the same counts give the same digits, alone or in company.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
-from typing import Literal
-
 import numpy as np
 from numpy.typing import NDArray
 
 from revinf.stats.quadrature import panel_masses, panel_nodes, panel_quantiles
+from revinf.stats.ratio_kernel import Kernel, RatioPrior, inner_mode, log_inner
 
 __all__ = ["RatioPrior", "log_ratio_posterior", "log_ratio_posterior_and_ahead"]
 
-RatioPrior = Literal["shared", "independent"]
-
 _Array = NDArray[np.float64]
-
-_NORMAL_975 = 1.959964
-"""The value that design and published figures use for the 97.5 % point of the normal law."""
 
 _STEP, _REACH = 0.19, 5.2
 _STRETCHED = np.sinh(np.arange(-_REACH, _REACH + _STEP / 2, _STEP))
 _STRETCH_SLOPE = np.cosh(np.arange(-_REACH, _REACH + _STEP / 2, _STEP))
 """Trapezoid nodes of the inner integral: exponential tails down to 1e-30, a Gaussian core to 1e-11."""
 
+_MANY = 50.0
+_CORE = slice(12, -12)
+"""Nodes within 9.3 widths of the top: beyond, an integrand whose exponents are above 50 has fallen to 3e-13 of it."""
+
 _PANELS = 18
 """Panels of the outer integral, before those at the cliffs."""
-
-_CLIFF = np.array([6.0, 0.0, -6.0, -36.0, -216.0, -1296.0])
-"""Edges beside a cliff, in its widths: a normal step, and towards theta = 0 the power law that ends there."""
 
 _POWER = 3
 """Beside the break theta runs as the cube of the panel's variable, which smooths the cusp there."""
@@ -51,6 +45,9 @@ _WIDEST = 150.0
 
 _DROP = 34.0
 """The panels end where the log density has fallen by this much from its top: e^-34 is 2e-15."""
+
+_NEGLIGIBLE = 40.0
+"""Within the panels, no density below e^-40 of the top is worked out; Laplace's method may be off by a few."""
 
 _DISTANCES = np.geomspace(1e-13, 2 * _WIDEST, 72)
 """Where the fall from the top is looked at, on either side; neighbours differ by a factor of 1.65."""
@@ -102,62 +99,10 @@ def log_ratio_posterior_and_ahead(
     >>> round(float(ahead[0]), 9)
     0.5
     """
-    return _solve(_Kernel.of(counts, prior, limit), levels)
+    return _solve(Kernel.of(counts, prior, limit), levels)
 
 
-@dataclass(frozen=True, slots=True)
-class _Kernel:
-    """The exponents of the kernel, arrays over tables; `*_up` hold for theta > 0, `*_down` below."""
-
-    power: NDArray[np.float64]  # A, of p
-    miss_up: NDArray[np.float64]  # B, of 1-p, when the larger probability is the term's
-    miss_down: NDArray[np.float64]
-    small_miss_up: NDArray[np.float64]  # C, of 1 - p e^-|theta|
-    small_miss_down: NDArray[np.float64]
-    fade_up: NDArray[np.float64]  # E, of e^-|theta|
-    fade_down: NDArray[np.float64]
-    weight: NDArray[np.float64]  # w, share of the studies that carry the term
-    spread: float  # standard deviation of the prior of ln R; inf for independent rates
-    cliffs: NDArray[np.float64]  # panel edges where the larger probability reaches 1
-
-    @classmethod
-    def of(cls, counts: NDArray[np.float64], prior: RatioPrior, limit: float) -> _Kernel:
-        """Make the kernel of (T, 4) counts n11, n10, n01, n00."""
-        n11, n10, n01, n00 = counts.T
-        weight = (n11 + n10) / counts.sum(axis=1)
-        # Shared: dq = q_max p (1-p) dv and q^-1/2 = (p q_max)^-1/2 give A its 1/2 and B its 1; independent
-        # Jeffreys rates move half a count from each exponent of a miss to one of a hit.
-        half = 0.0 if prior == "shared" else 0.5
-        return cls(
-            power=n11 + n01 + 0.5 + half,
-            miss_up=n10 + 1 - half,
-            miss_down=n00 + 1 - half,
-            small_miss_up=n00 - half,
-            small_miss_down=n10 - half,
-            fade_up=n01 + half,
-            fade_down=n11 + half,
-            weight=weight,
-            spread=float(np.log(limit)) / _NORMAL_975 if prior == "shared" else float("inf"),
-            cliffs=_cliffs(counts),
-        )
-
-    def at(self, theta: _Array) -> tuple[_Array, _Array, _Array, _Array]:
-        """Return B, C, the log factor in theta alone, and 1 - q_max, at (T, n) values of theta."""
-        up = theta > 0
-        size = np.abs(theta)
-        miss = np.where(up, self.miss_up[:, None], self.miss_down[:, None])
-        small_miss = np.where(up, self.small_miss_up[:, None], self.small_miss_down[:, None])
-        fade = np.where(up, self.fade_up[:, None], self.fade_down[:, None])
-        outside = -fade * size
-        if not np.isfinite(self.spread):
-            return miss, small_miss, outside, np.zeros_like(theta)
-        lesser = np.where(up, 1 - self.weight[:, None], self.weight[:, None])
-        gap = lesser * -np.expm1(-size)  # 1 - q_max, exact near theta = 0
-        outside = outside + 0.5 * np.log1p(-gap) - 0.5 * (theta / self.spread) ** 2
-        return miss, small_miss, outside, gap
-
-
-def _solve(kernel: _Kernel, levels: _Array) -> tuple[_Array, _Array]:
+def _solve(kernel: Kernel, levels: _Array) -> tuple[_Array, _Array]:
     """Return the quantiles of theta, and its mass above 0, for every table of a kernel."""
     edges = _panel_edges(kernel)
     left, width = edges[:, :-1], np.diff(edges, axis=1)
@@ -177,7 +122,7 @@ def _solve(kernel: _Kernel, levels: _Array) -> tuple[_Array, _Array]:
     shape = n_tables, t.size
     panel, x = np.broadcast_to(t.astype(np.intp).ravel(), shape), np.broadcast_to(t.ravel() % 1, shape)
     theta, slope = unfold(panel, x)
-    log_density = _log_marginal(kernel, theta)
+    log_density = _log_marginal(kernel, theta, np.take_along_axis(width, panel, 1))
     log_density -= log_density.max(axis=1, keepdims=True)
     density = (np.exp(log_density) * slope).reshape(n_tables, *t.shape)
     place = panel_quantiles(density, 0.0, float(n_panels), levels)
@@ -187,58 +132,30 @@ def _solve(kernel: _Kernel, levels: _Array) -> tuple[_Array, _Array]:
     return unfold(panel, place - panel)[0], (mass * (left >= 0)).sum(axis=1) / mass.sum(axis=1)
 
 
-def _log_marginal(kernel: _Kernel, theta: _Array) -> _Array:
-    """Return the log density of theta, up to a constant, at (T, n) values: the inner integral."""
-    miss, small_miss, outside, gap = kernel.at(theta)
-    centre, top, width = _inner_mode(kernel, theta, miss, small_miss, gap)
-    v = centre[..., None] + width[..., None] * _STRETCHED
-    log_inner = _log_inner(kernel, v, theta, miss, small_miss, gap) - top[..., None]
-    inner = (np.exp(log_inner) * _STRETCH_SLOPE).sum(axis=-1)
-    return np.asarray(outside + top + np.log(inner * width))
+def _log_marginal(kernel: Kernel, theta: _Array, width: _Array) -> _Array:
+    """Return the log density of theta, up to a constant, at (T, n) values: the inner integral.
 
-
-def _log_inner(kernel: _Kernel, v: _Array, theta: _Array, miss: _Array, small_miss: _Array, gap: _Array) -> _Array:
-    """Return the log of the kernel's part in v, at (T, n, m) values of v."""
-    log_q = -np.logaddexp(0.0, v)  # log(1-p)
-    q = np.exp(log_q)
-    p = -np.expm1(log_q)
-    # log p as v + log(1-p): exact for small p too.
-    result = kernel.power[:, None, None] * (v + log_q) + miss[..., None] * log_q
-    fall = -np.expm1(-np.abs(theta))[..., None]
-    result += small_miss[..., None] * np.log(q + p * fall)  # 1 - p r = (1-p) + p (1-r)
-    if np.isfinite(kernel.spread):
-        result -= 0.5 * np.log(q + p * gap[..., None])
-    return np.asarray(result)
-
-
-def _inner_mode(
-    kernel: _Kernel, theta: _Array, miss: _Array, small_miss: _Array, gap: _Array
-) -> tuple[_Array, _Array, _Array]:
-    """Return the place, height and width of the inner integrand's top, (T, n) each.
-
-    Without the slowly varying factor in q_max the top solves r(A+B+C) p^2 - (A(1+r)+B+rC) p + A = 0,
-    the equation of the likelihood's ridge at a fixed ratio; its smaller root lies in (0, 1). Where C is
-    -1/2 (independent rates, no misses) that factor varies slowly too and is left out: it only flattens
-    the side towards p = 1.
+    It is taken only where the density may matter: in a panel of some width, and where Laplace's method does
+    not put it below e^-40 of the top. Elsewhere it is 0.
     """
-    a, fall = kernel.power[:, None], -np.expm1(-np.abs(theta))
-    r, c = np.exp(-np.abs(theta)), np.maximum(small_miss, 0)
-    square = r * (a + miss + c)
-    # The same equation in 1-p has the coefficients square, slope, -miss (1-r): nothing cancels in its
-    # discriminant, whereas linear^2 - 4 square A loses every digit for counts of 1e9 without a miss.
-    linear, slope = a * (1 + r) + miss + r * c, (a + miss) * fall - r * (miss + c)
-    root = np.hypot(slope, 2 * np.sqrt(square * miss * fall))
-    p = 2 * a / (linear + root)
-    q = np.where(slope > 0, 2 * miss * fall / (np.abs(slope) + root), (np.abs(slope) + root) / (2 * square))
-    centre = np.log(p) - np.log(q)
-    small_q = q + p * fall  # 1 - p r
-    bend = a + miss + c * r * (1 - 2 * p + r * p * p) / small_q**2
-    width = 1 / np.sqrt(p * q * np.maximum(bend, 0.5 * np.minimum(a, miss)))
-    top = _log_inner(kernel, centre[..., None], theta, miss, small_miss, gap)[..., 0]
-    return centre, top, width
+    miss, small_miss, outside, gap = kernel.at(theta)
+    centre, top, spread = inner_mode(kernel, theta, miss, small_miss, gap)
+    height = outside + top + np.log(spread)
+    chosen = (width > 0) & (height > height.max(axis=1, keepdims=True) - _NEGLIGIBLE)
+    power = np.broadcast_to(kernel.power[:, None], theta.shape)
+    result = np.full(theta.shape, -np.inf)
+    # With many hits and misses the integrand is near a Gaussian, and the far nodes hold nothing.
+    many = np.minimum(power, miss) > _MANY
+    for here, nodes in ((chosen & many, _CORE), (chosen & ~many, slice(None))):
+        parts = [values[here][:, None] for values in (power, theta, miss, small_miss, gap)]
+        v = centre[here][:, None] + spread[here][:, None] * _STRETCHED[nodes]
+        logs = log_inner(v, *parts) - top[here][:, None]
+        inner = (np.exp(logs) * _STRETCH_SLOPE[nodes]).sum(axis=-1)
+        result[here] = height[here] + np.log(inner)
+    return result
 
 
-def _panel_edges(kernel: _Kernel) -> _Array:
+def _panel_edges(kernel: Kernel) -> _Array:
     """Return the edges of the outer panels, (T, n); those of no width have no mass."""
     mode = _outer_mode(kernel)
     top = _height(kernel, mode)
@@ -263,21 +180,7 @@ def _panel_edges(kernel: _Kernel) -> _Array:
     return np.sort(np.concatenate([edges, beside, cliffs], axis=1), axis=1)
 
 
-def _cliffs(counts: _Array) -> _Array:
-    """Return panel edges around the two values of theta at which the larger probability reaches 1.
-
-    With few studies on a side, none or few of them misses, the density of theta does not fade there but
-    breaks off, over the width of ln p of the *other* side: 1/1 v 500/10000 ends at ln 20 within 0.04.
-    """
-    edges = []
-    for sign, hits, misses in ((-1.0, counts[:, 2:3], counts[:, 3:]), (1.0, counts[:, :1], counts[:, 1:2])):
-        share = (hits + 0.5) / (hits + misses + 1)
-        width = np.sqrt((misses + 0.5) / ((hits + 0.5) * (hits + misses + 1)))
-        edges.append(sign * (np.log(share) - width * _CLIFF))
-    return np.concatenate(edges, axis=1)
-
-
-def _outer_mode(kernel: _Kernel) -> _Array:
+def _outer_mode(kernel: Kernel) -> _Array:
     """Return, as (T, 1), where the density of theta is highest, by zooming in a fixed number of times."""
     n_tables = len(kernel.weight)
     low, high = np.full((n_tables, 1), -_WIDEST), np.full((n_tables, 1), _WIDEST)
@@ -290,8 +193,8 @@ def _outer_mode(kernel: _Kernel) -> _Array:
     return np.asarray((low + high) / 2)
 
 
-def _height(kernel: _Kernel, theta: _Array) -> _Array:
+def _height(kernel: Kernel, theta: _Array) -> _Array:
     """Return the log density of theta by Laplace's method: cheap, and near enough to place panels."""
     miss, small_miss, outside, gap = kernel.at(theta)
-    _, top, width = _inner_mode(kernel, theta, miss, small_miss, gap)
+    _, top, width = inner_mode(kernel, theta, miss, small_miss, gap)
     return np.asarray(outside + top + np.log(width))

@@ -14,6 +14,9 @@ from revinf.manuscript.statement_patterns import ACTIVITY, ANAPHOR, CONTRASTED, 
 __all__ = ["antecedent", "place_groups"]
 
 
+_FOUND = re.compile(r"\b(?:our|these|this|the)\s+(?:\w+\s+)?(?:findings?|results?|observations?|data)\b", re.IGNORECASE)
+
+
 def antecedent(sentence: Reading, before: Reading | None, cue: CueMention) -> tuple[list[PlaceMention], bool]:
     """Return the places whose activity a cue starts from, and whether they stand in the sentence before."""
     here = [place for place in sentence.places if place.start < cue.end]
@@ -21,7 +24,11 @@ def antecedent(sentence: Reading, before: Reading | None, cue: CueMention) -> tu
         return place_groups(sentence.text, here)[-1], False
     if cue.direction == "conclude" and sentence.places and ACTIVITY.search(sentence.text):
         return place_groups(sentence.text, sentence.places)[-1], False
-    if before is None or not before.places or not ACTIVITY.search(before.text + sentence.text):
+    if (
+        before is None
+        or not before.places
+        or not (ACTIVITY.search(before.text + sentence.text) or _FOUND.search(sentence.text))
+    ):
         return [], False
     points_back = ANAPHOR.search(sentence.text[: cue.end]) or cue.direction in ("conclude", "therefore")
     return (place_groups(before.text, before.places)[0], True) if points_back else ([], False)

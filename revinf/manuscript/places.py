@@ -147,7 +147,25 @@ def find_places(text: str, words: list[Token], defined: Mapping[str, str] | None
             )
         )
         position = hit.last + 1
-    return mentions
+    return mentions or _brodmann(text)
+
+
+_BRODMANN = re.compile(
+    r"(?:\b(?P<side>left|right|bilateral|L|R)\s+)?\b(?:Brodmann(?:['’]s|s)?\s+areas?|BAs?)\s?(?P<number>\d{1,2})\b"
+)
+
+
+def _brodmann(text: str) -> list[PlaceMention]:
+    """Return Brodmann areas: only where no place has a name, beside which they are but a note."""
+    return [
+        PlaceMention(
+            place=f"brodmann area {found['number']}",
+            side=_SIDES.get((found["side"] or "").lower(), ""),
+            start=found.start(),
+            end=found.end(),
+        )
+        for found in _BRODMANN.finditer(text)
+    ]
 
 
 _ACTIVE_BESIDE = re.compile(

@@ -11,6 +11,14 @@ from revinf.manuscript.statement_patterns import NEGATOR, SELF
 __all__ = ["is_declined", "is_hedged", "is_premise", "is_reported", "refused_from"]
 
 
+_LIKE_OTHERS = re.compile(
+    r"\W*(?:in (?:line|agreement|accord|accordance|keeping|contrast)|consistent|contrary|similar|like|unlike|as in|"
+    r"much as|compared)\b",
+    re.IGNORECASE,
+)
+"""Opens "In line with earlier reports, the place suggests ...": the step is the author's own."""
+
+
 def is_hedged(sentence: Reading, cue: CueMention) -> bool:
     """Tell whether a step is made with reserve."""
     hedges = [other for other in sentence.cues if other.direction == "hedge"]
@@ -49,7 +57,11 @@ def refused_from(sentence: Reading) -> float:
 def is_reported(sentence: Reading, cue: CueMention) -> bool:
     """Tell whether a step is the step of others."""
     for other in sentence.cues:
-        if other.direction != "report" or other.start > cue.end:
+        if other.direction != "report" or other.start > cue.end or _within(other, cue):
+            continue
+        if _LIKE_OTHERS.match(sentence.text) and any(
+            "," in sentence.text[other.start : place.start] for place in sentence.places if place.start < other.end
+        ):
             continue
         if other.end < cue.start and SELF.search(sentence.text[other.end : cue.start]):
             continue
@@ -61,8 +73,13 @@ def is_reported(sentence: Reading, cue: CueMention) -> bool:
 def is_premise(sentence: Reading, cue: CueMention) -> bool:
     """Tell whether a cue only stands inside a general statement about the place."""
     for other in sentence.cues:
-        if other.direction != "premise" or other.start > cue.start:
+        if other.direction != "premise" or other.start > cue.start or _within(other, cue):
             continue
         if other.start <= cue.start <= other.end or 0 <= cue.start - other.end <= 12:
             return True
     return False
+
+
+def _within(other: CueMention, cue: CueMention) -> bool:
+    """Tell whether a cue is only a part of the words of another: "supports" of "supports the view that"."""
+    return cue.start <= other.start and other.end <= cue.end

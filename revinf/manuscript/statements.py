@@ -8,10 +8,13 @@ open), "reported" (the step of others), "background" (a premise), "forward" (the
 from __future__ import annotations
 
 import re
+from collections.abc import Sequence
 
 from revinf.manuscript.antecedents import antecedent, place_groups
 from revinf.manuscript.cues import CueMention
 from revinf.manuscript.inference import Inference, Reading, Statement, StatementKind
+from revinf.manuscript.juxtaposition import juxtaposed
+from revinf.manuscript.places import PlaceMention
 from revinf.manuscript.processes import ProcessMention
 from revinf.manuscript.stance import is_declined, is_hedged, is_premise, is_reported, refused_from
 from revinf.manuscript.statement_patterns import (
@@ -23,10 +26,13 @@ from revinf.manuscript.statement_patterns import (
     SUBJECT,
     TASK_NOUN,
 )
-from revinf.manuscript.unlisted import named_after
+from revinf.manuscript.unlisted import named_after, named_clause
 
 __all__ = ["read_statement"]
 
+
+_IT = re.compile(r"\s+(?:it|this|so|that)\s*[.,;]")
+"""The object of "Fear was not rated, but the response implies it"."""
 
 _LEAD = 12  # letters before a cue that opens its sentence: "Highly", "Also,"
 
@@ -72,7 +78,9 @@ def read_statement(sentence: Reading, before: Reading | None = None) -> Statemen
         return Statement(kind="claim", inferences=_once(found))
     if reported:
         return Statement(kind="reported")
-    return Statement(kind=_other_kind(sentence))
+    kind = _other_kind(sentence)
+    beside = juxtaposed(sentence) if kind in ("none", "forward") else []
+    return Statement(kind="claim", inferences=_once(beside)) if beside else Statement(kind=kind)
 
 
 def _is_stronger(sentence: Reading, item: Inference) -> bool:
@@ -101,15 +109,10 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
             return fronted
         places, from_before = antecedent(sentence, before, cue)
         processes = _after(sentence, cue.end)
-        if cue.direction == "therefore" and not _is_assertion(sentence, cue):
+        if cue.direction == "therefore" and processes and not _is_assertion(sentence, cue):
             return []
     elif cue.direction == "backwards":
-        places = [place for place in sentence.places if place.start >= cue.end]
-        places = place_groups(sentence.text, places)[0] if places else []
-        from_before = False
-        if not places and before is not None and ANAPHOR.search(sentence.text[cue.end :]):
-            places, from_before = list(before.places), True
-        processes = _task_free(sentence, [process for process in sentence.processes if process.end <= cue.start])
+        places, from_before, processes = _backwards(sentence, before, cue)
     elif cue.direction == "because":
         return _because(sentence, cue)
     else:
@@ -117,14 +120,62 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
     if not places:
         return []
     processes = [process for process in processes if process.listed] or processes
-    if not processes and cue.direction in ("reverse", "conclude"):
-        unnamed = named_after(sentence.text, cue.end)
+    if not processes and cue.direction == "reverse" and _IT.match(sentence.text, cue.end):
+        processes = [process for process in sentence.processes if process.end <= places[0].start]
+    linked = _linked_to(sentence, places, cue)
+    if not processes and linked is not None:
+        processes = _after(sentence, linked)
+    if not processes:
+        unnamed = _unnamed(sentence, cue, linked)
         processes = [unnamed] if unnamed is not None and not _names_place(sentence, unnamed) else []
     hedged = is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=from_before, cue=cue, hedged=hedged)
         for process in processes
     ]
+
+
+def _backwards(
+    sentence: Reading, before: Reading | None, cue: CueMention
+) -> tuple[list[PlaceMention], bool, list[ProcessMention]]:
+    """Return the places after a cue and the processes before it; those after the comma where the cue stands first."""
+    comma = _comma_of_fronted(sentence, cue)
+    end = len(sentence.text) if comma is None else comma
+    places = [place for place in sentence.places if cue.end <= place.start < end]
+    places, from_before = (place_groups(sentence.text, places)[0] if places else []), False
+    if not places and before is not None and ANAPHOR.search(sentence.text[cue.end : end]):
+        places, from_before = list(before.places), True
+    processes = [
+        process
+        for process in sentence.processes
+        if (process.end <= cue.start if comma is None else process.start >= comma)
+    ]
+    return places, from_before, _task_free(sentence, processes)
+
+
+def _comma_of_fronted(sentence: Reading, cue: CueMention) -> int | None:
+    """Return where the main clause begins after a cue that opens its sentence: "As shown by the place, ..."."""
+    comma = re.search(r",\s", re.sub(r"\([^)]*\)", lambda found: "_" * len(found.group()), sentence.text)[cue.end :])
+    return cue.end + comma.end() if cue.start < _LEAD and comma is not None else None
+
+
+def _linked_to(sentence: Reading, places: Sequence[PlaceMention], cue: CueMention) -> int | None:
+    """Return where the process of "we relate the activity of the place to the process" begins."""
+    if cue.direction != "conclude" or not places or places[-1].start < cue.end:
+        return None
+    found = re.compile(r"(?:\([^)]*\)|\[[^\]]*\]|[^,;:]){0,60}?\b(?:to|with|as)\b").match(sentence.text, places[-1].end)
+    return found.end() if found else None
+
+
+def _unnamed(sentence: Reading, cue: CueMention, linked: int | None) -> ProcessMention | None:
+    """Return the words that stand where a cue wants a process, if none has a name there."""
+    if cue.direction in ("reverse", "conclude"):
+        return named_after(sentence.text, cue.end if linked is None else linked)
+    if cue.direction == "backwards":
+        comma = _comma_of_fronted(sentence, cue)
+        start, end = (0, cue.start) if comma is None else (comma, len(sentence.text))
+        return named_clause(sentence.text, start, end)
+    return named_clause(sentence.text, 0 if cue.start < _LEAD else cue.end, len(sentence.text))
 
 
 def _fronted(sentence: Reading, cue: CueMention) -> list[Inference]:
@@ -215,7 +266,7 @@ def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
         return []
     end = cue.end + comma.start() if at_start and comma else len(sentence.text)
     reason = sentence.text[cue.end : end]
-    places = [place for place in sentence.places if cue.end <= place.start < end]
+    places = [place for place in sentence.places if cue.start <= place.start < end]
     if not places or not ACTIVITY.search(reason):
         return []
     outside = [
@@ -225,6 +276,9 @@ def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
         return []
     if not at_start and any(place.end <= cue.start for place in sentence.places):
         return []
+    if not outside:
+        unnamed = named_clause(sentence.text, *((end + 1, len(sentence.text)) if at_start else (0, cue.start)))
+        outside = [unnamed] if unnamed is not None else []
     hedged = is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=False, cue=cue, hedged=hedged)

@@ -12,7 +12,7 @@ _NUMBER = rf"(?:{_MINUS}\s?)?\d{{1,3}}(?:\.\d{{1,2}})?"
 _COMMA_NUMBER = rf"(?:{_MINUS}\s?)?\d{{1,3}}(?:,\d{{1,2}})?"
 _EDGE = r"(?<![\w.,/:\u2212\u2013-])(?<!\d\s)"
 _AFTER = r"(?![\w%°]|[.,]\d|\s?[/×]\s?\d|\s?(?:%|°))"
-_SEPARATOR = r"\s*[,;/|]\s*|\s+"
+_SEPARATOR = r"(?:\s?mm)?\s*[,;/|]\s*|\s+"
 
 _LABELLED = re.compile(
     rf"\bx\s*[=:]\s*(?P<x>{_NUMBER})\s*(?:mm)?\s*[,;/]?\s*(?:and\s+)?y\s*[=:]\s*(?P<y>{_NUMBER})\s*(?:mm)?\s*[,;/]?\s*"
@@ -23,6 +23,8 @@ _RUN = re.compile(
     rf"{_EDGE}(?P<x>{_NUMBER})(?P<s>{_SEPARATOR})(?P<y>{_NUMBER})(?P<t>{_SEPARATOR})(?P<z>{_NUMBER}){_AFTER}"
 )
 _SEMICOLONS = re.compile(rf"{_EDGE}(?P<x>{_COMMA_NUMBER});\s*(?P<y>{_COMMA_NUMBER});\s*(?P<z>{_COMMA_NUMBER}){_AFTER}")
+
+_WITH_AND = re.compile(rf"{_EDGE}(?P<x>{_NUMBER})(?P<s>\s*,\s*)(?P<y>{_NUMBER}),?\s+and\s+(?P<z>{_NUMBER}){_AFTER}")
 
 _WORDS = re.compile(
     r"\bcoordinates?\b|\bMNI\b|\bMNI152\b|\bTalairach\b|\bTAL\b|\bTLRC\b|\bpeak\w*\b|\bmaxim\w+\b|\bvoxels?\b|"
@@ -56,6 +58,10 @@ _BRAIN = re.compile(
     r"gyr|sulc|cort|lob[eu]|insul|amygd|hippoc|thalam|striat|caud|putam|pallid|cerebel|cuneus|cingul|junction|nucle|"
     r"\barea|\bpole|opercul|brain|\bpons|collic|vermis|accumbens|activ|respon|[A-Z]{2,}"
 )
+_SIDE = re.compile(r"\b[LR]\s*:\s*$")
+_COMPANY = 60
+"""Letters between a triple that is sure and a plain one of the same look that it vouches for."""
+
 _OUTSIDE = (100.0, 140.0, 110.0)
 """No head reaches as far (mm)."""
 
@@ -90,28 +96,64 @@ def find_triples(text: str) -> list[Triple]:
     [(36.0, 22.0, -4.0)]
     """
     found: list[Triple] = []
-    for pattern, form in ((_LABELLED, "labelled"), (_SEMICOLONS, "semicolons"), (_RUN, "listed")):
+    plain: list[tuple[re.Match[str], str]] = []
+    forms = ((_LABELLED, "labelled"), (_SEMICOLONS, "semicolons"), (_RUN, "listed"), (_WITH_AND, "listed"))
+    for pattern, form in forms:
         position = 0
         while match := pattern.search(text, position):
-            position = match.end()
-            if any(match.start() < other.end and other.start < match.end() for other in found):
+            if _overlaps(match, found):
+                position = match.end()
                 continue
-            xyz = tuple(_value(match[axis]) for axis in "xyz")
-            if not all(abs(value) <= limit for value, limit in zip(xyz, _OUTSIDE, strict=True)):
+            if _is_possible(match) and (form == "labelled" or _is_place(text, match)):
+                position = match.end()
+                found.append(_triple(text, match, form))
                 continue
-            if form != "labelled" and not _is_place(text, match):
-                position = match.end("x")  # the run may begin one number later
-                continue
-            found.append(
-                Triple(
-                    xyz=(xyz[0], xyz[1], xyz[2]),
-                    space=space_said(text, match.start(), match.end()),
-                    start=match.start(),
-                    end=match.end(),
-                    form=form,
-                )
-            )
+            if form == "listed" and _is_possible(match) and _could_be(text, match):
+                plain.append((match, form))
+            position = match.end("x")  # the run may begin one number later
+    for match, form in plain:
+        if not _overlaps(match, found) and any(_is_company(text, match, other) for other in found):
+            found.append(_triple(text, match, form))
     return sorted(found, key=lambda triple: triple.start)
+
+
+def _overlaps(match: re.Match[str], found: list[Triple]) -> bool:
+    """Tell whether a match shares letters with a triple that was found before."""
+    return any(match.start() < other.end and other.start < match.end() for other in found)
+
+
+def _triple(text: str, match: re.Match[str], form: str) -> Triple:
+    """Return a match as a triple."""
+    x, y, z = (_value(match[axis]) for axis in "xyz")
+    space = space_said(text, match.start(), match.end())
+    return Triple(xyz=(x, y, z), space=space, start=match.start(), end=match.end(), form=form)
+
+
+def _is_possible(match: re.Match[str]) -> bool:
+    """Tell whether three numbers lie in a head and are no fractions below 1, which are statistics."""
+    sizes = [abs(_value(match[axis])) for axis in "xyz"]
+    if not all(size <= limit for size, limit in zip(sizes, _OUTSIDE, strict=True)):
+        return False
+    return max(sizes) >= 1 or all(size == 0 for size in sizes)
+
+
+def _is_company(text: str, match: re.Match[str], other: Triple) -> bool:
+    """Tell whether a sure triple vouches for a plain one: near, as open or closed, with the same separator."""
+    first, second = sorted([(match.start(), match.end()), (other.start, other.end)])
+    between = text[first[1] : second[0]]
+    if len(between) > _COMPANY or re.search(r"[=<>%]|\b(?:of|than|refs?)\b", between):
+        return False
+    bracket, other_bracket = (_open_bracket(text[:start]) for start in (match.start(), other.start))
+    if bracket != other_bracket:
+        return False
+    separators = re.findall(r"[,;/|]", text[other.start : other.end])
+    return (separators[0] if separators else "") == match["s"].replace("mm", "").strip()
+
+
+def _open_bracket(before: str) -> str:
+    """Return the bracket that is open at the end of a text; "" for none."""
+    found = re.search(r"[(\[{](?=[^)\]}]*$)", before)
+    return found.group() if found else ""
 
 
 def _value(text: str) -> float:
@@ -123,22 +165,21 @@ def _value(text: str) -> float:
 def _is_place(text: str, match: re.Match[str]) -> bool:
     """Tell coordinates from statistics, sizes, counts, dates and citations."""
     before, after = text[max(0, match.start() - 60) : match.start()], text[match.end() : match.end() + 40]
-    if _STATISTIC.search(before) or _COUNTED.match(after):
-        return False
-    if match.re is _RUN and not _alike(match["s"], match["t"]):
-        return False
-    signed = any(re.match(_MINUS, match[axis]) for axis in "xyz")
+    signed = _is_signed(match)
     opened = re.search(r"[(\[{][^)\]}]*$", before)
     named = _WORDS.search(before[-45:]) is not None
-    if _COUNTING.search(before) and not (signed and opened):
+    if not _could_be(text, match):
         return False
+    if match.re is _WITH_AND:
+        return signed and _STRONG.search(before[-45:]) is not None
     largest = max(abs(_value(match[axis])) for axis in "xyz")
     if signed and (opened or named or (match["s"].strip() and largest >= 10)):
         return True
     if not signed and re.search(r"\[\s*$", before) and re.match(r"\s*[\],]", after) and "," in match["s"] and not named:
         return False  # [12, 14, 18] cites
     if signed:
-        return _STRONG.search(before[-45:]) is not None
+        # A row of a table that stands in the prose: the name of the place right before.
+        return _STRONG.search(before[-45:]) is not None or (largest >= 10 and _BRAIN.search(before[-22:]) is not None)
     if _STRONG.search(before[-45:]) or (opened and named) or re.search(r"[(\[][A-Za-z-]{2,8}[;,:]\s*$", before):
         return True
     if not re.search(r"[(\[]\s*$", before) or not re.match(r"\s*[)\];,]", after):
@@ -148,9 +189,25 @@ def _is_place(text: str, match: re.Match[str]) -> bool:
     return not x < y < z or _BRAIN.search(before[-50:]) is not None
 
 
+def _is_signed(match: re.Match[str]) -> bool:
+    """Tell whether a number of a triple has a sign."""
+    return any(re.match(_MINUS, match[axis]) for axis in "xyz")
+
+
+def _could_be(text: str, match: re.Match[str]) -> bool:
+    """Tell whether nothing around three numbers says that they are statistics, sizes, counts, dates or citations."""
+    before, after = text[max(0, match.start() - 60) : match.start()], text[match.end() : match.end() + 40]
+    if _COUNTED.match(after) or (_STATISTIC.search(before) and not _SIDE.search(before)):
+        return False
+    if match.re is _RUN and not _alike(match["s"], match["t"]):
+        return False
+    opened = re.search(r"[(\[{][^)\]}]*$", before)
+    return not _COUNTING.search(before) or bool(_is_signed(match) and opened)
+
+
 def _alike(first: str, second: str) -> bool:
     """Tell whether the two separators of a run are of one kind."""
-    return (first.strip() or " ") == (second.strip() or " ")
+    return first.replace("mm", "").strip() == second.replace("mm", "").strip()
 
 
 def space_said(text: str, start: int = 0, end: int | None = None) -> str:

@@ -11,7 +11,7 @@ import re
 from revinf.manuscript.phrases import Token
 from revinf.manuscript.processes import ProcessMention
 
-__all__ = ["named_after", "unlisted_processes"]
+__all__ = ["named_after", "named_clause", "speaks_of_people", "unlisted_processes"]
 
 _HEADS_WORDS = """
     perception processing memory memories learning control regulation imagery attention monitoring detection
@@ -47,6 +47,45 @@ _FELT = re.compile(
     r"(?P<what>[a-z][a-z-]+(?:al|ed|ic|ous|ful|ive|ious|less|ant|ent|gia|ness|ment|ity|tion|ion|ry|ief|"
     r"ror|ror|dom|ship|thy))\b"
 )
+_DONE_TO = frozenset(
+    [
+        "engaged",
+        "involved",
+        "recruited",
+        "activated",
+        "observed",
+        "found",
+        "included",
+        "excluded",
+        "scanned",
+        "instructed",
+        "asked",
+        "presented",
+        "required",
+        "used",
+        "tested",
+        "trained",
+        "recorded",
+        "measured",
+        "compared",
+        "associated",
+        "related",
+        "modulated",
+        "increased",
+        "decreased",
+        "reduced",
+        "enhanced",
+        "located",
+        "correlated",
+        "corrected",
+        "reported",
+        "shown",
+        "expected",
+        "predicted",
+    ]
+)
+"""Participles of what was done to people and places, which no one feels."""
+
 _STATE_OF = re.compile(
     r"\b(?:feelings?|sense|state|experience|sensation|moment|kind|form|act|process|processes|bout)\s+of\s+"
     r"(?:(?:a|an|the|some|their|strong|mild|deep)\s+)*(?P<what>[a-z][a-z-]+(?:\s+[a-z][a-z-]+)?)\b"
@@ -106,9 +145,45 @@ def unlisted_processes(text: str, words: list[Token]) -> list[ProcessMention]:
     for pattern in (_FELT, _STATE_OF):
         for match in pattern.finditer(text):
             start, end = match.span("what")
-            if not any(mention.start < end and start < mention.end for mention in found):
+            if match["what"] not in _DONE_TO and not any(
+                mention.start < end and start < mention.end for mention in found
+            ):
                 found.append(ProcessMention(term=match["what"], start=start, end=end, listed=False))
     return sorted(found, key=lambda mention: mention.start)
+
+
+def named_clause(text: str, start: int, end: int) -> ProcessMention | None:
+    """Return what a clause says that people did, felt or were, where no process has a name in it.
+
+    Parameters
+    ----------
+    text : str
+        The sentence.
+    start, end : int
+        Of the clause.
+
+    Returns
+    -------
+    ProcessMention or None
+        None where the clause speaks of the study itself.
+
+    Examples
+    --------
+    >>> named_clause("Buyers anticipated the loss, as shown by the insula.", 0, 27).term
+    'anticipated the loss'
+    """
+    adverb = _ADVERB.match(text, start, end)
+    start = adverb.end() if adverb else start
+    found = _PEOPLE.match(text, start, end) or _BE.match(text, start, end)
+    if found is None or _STUDY.search(text, start, end):
+        return None
+    words = found["what"].strip()
+    return ProcessMention(term=words.lower(), start=found.start("what"), end=found.end("what"), listed=False)
+
+
+def speaks_of_people(text: str, start: int) -> bool:
+    """Tell whether a clause begins with people: "the guests were hungry"."""
+    return _PEOPLE.match(text, start) is not None
 
 
 def named_after(text: str, start: int) -> ProcessMention | None:
@@ -135,6 +210,8 @@ def named_after(text: str, start: int) -> ProcessMention | None:
     >>> named_after("It suggests an effect of sample size.", 11) is None
     True
     """
+    opinion = _OPINION.match(text, start)
+    start = opinion.end() if opinion else start
     for pattern in (_PEOPLE, _CLAUSE, _NOUN):
         found = pattern.match(text, start)
         if found is None:
@@ -151,6 +228,7 @@ _WHO = (
     r"patients?|people|"
     r"persons?|children|adults|drivers?|sleepers?|musicians?|students?|learners?|smokers?|buyers?|"
     r"travell?ers?|walkers?|"
+    r"\w+(?:eers|ists|goers)|consumers?|diners?|raters?|workers?|teenagers?|teachers?|pupils?|owners?|shoppers?|"
     r"they|individuals?|respondents?|audiences?|everyone|everybody|crowd|commuters?|investors?|gamblers?|"
     r"singers?|dancers?|climbers?|tasters?|parents?|mothers?|fathers?|"
     r"the brain|men|women|infants?|users?|customers?|visitors?|guests?|members?|athletes?|pilots?)"
@@ -163,9 +241,21 @@ _PEOPLE = re.compile(
     r"(?P<what>[\w'’-]+(?:\s+[\w'’-]+){0,5})",
     re.IGNORECASE,
 )
+_ADVERB = re.compile(r"\W*(?:\w+ly|thus|hence|therefore|perhaps|so|then|in short|in sum),?\s", re.IGNORECASE)
+_BE = re.compile(
+    r"\W*(?P<what>(?:[\w'’-]+\s+){1,3}?(?:was|were|had|seemed|appeared|felt|became|must have been)"
+    r"(?:\s+[\w'’-]+){1,4})",
+    re.IGNORECASE,
+)
 _CLAUSE = re.compile(
     r"(?:\W*(?:that|how)\s+|(?<=\bthat)\s+|(?<=\bhow)\s+)(?P<what>[\w'’-]+(?:\s+[\w'’-]+){1,7})", re.IGNORECASE
 )
+_OPINION = re.compile(
+    r"\W*(?:(?:the|a|an|our|this)\s+)?(?:idea|notion|view|hypothesis|assumption|possibility|interpretation|account|"
+    r"claim|proposal|conclusion|suspicion|impression|fact)\s+(?:that|of\s+how)(?=\s)",
+    re.IGNORECASE,
+)
+"""Words that only bring in a clause: "in line with the idea that"."""
 _NOUN = re.compile(
     r"\W*(?:of\s+|for\s+|to\s+|with\s+|at\s+)?(?:a\s+|an\s+|the\s+|some\s+|their\s+|such\s+|more\s+|"
     r"greater\s+|increased\s+|"
@@ -185,7 +275,9 @@ _STUDY = re.compile(
     r"connectivity|role|roles|function|functions|importance|interactions?|correlations?|replicat\w+|caution|"
     r"view|account|"
     r"notion|idea|possibility|interpretation|previous|earlier|prior work|statistic\w*|significan\w+|future|"
-    r"further|limit\w*|from the brain)\b",
+    r"further|limit\w*|from the brain|"
+    r"scanners?|drop-?outs?|masks?|age|sex|gender|handedness|runs|baselines?|coils?|resolution|registration|"
+    r"normali[sz]ation|susceptibility|breathing|heart rates?|head motion)\b",
     re.IGNORECASE,
 )
 

@@ -27,11 +27,12 @@ def _has_claim(sentence: str) -> bool:
 def test_the_second_set_loses_no_more_than_one_claim_in_twenty() -> None:
     sentences = _sentences("claim")
     missed = [sentence for sentence in sentences if not _has_claim(sentence)]
-    assert len(sentences) > 60
+    assert len(sentences) > 300
     assert len(missed) <= len(sentences) / 20, missed
 
 
-def test_plain_findings_and_denials_are_no_claims() -> None:
+def test_of_plain_findings_methods_and_denials_few_are_taken_for_claims() -> None:
     sentences = _sentences("no claim")
-    assert len(sentences) >= 20
-    assert [sentence for sentence in sentences if _has_claim(sentence)] == []
+    taken = [sentence for sentence in sentences if _has_claim(sentence)]
+    assert len(sentences) > 100
+    assert len(taken) <= len(sentences) / 12, taken

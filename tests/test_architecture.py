@@ -16,15 +16,16 @@ PACKAGE = ROOT / "revinf"
 
 INSIDE = {
     "exceptions": set(),
+    "whole_folder": {"exceptions"},
     "knowledge": {"exceptions"},
     "stats": {"exceptions"},
     "spaces": {"exceptions", "knowledge"},
-    "literature": {"exceptions", "knowledge", "spaces"},
+    "literature": {"exceptions", "whole_folder", "knowledge", "spaces"},
     "base_rates": {"exceptions", "stats", "spaces", "literature"},
     "evidence": {"exceptions", "knowledge", "stats", "spaces", "literature", "base_rates"},
     "calibration": {"exceptions", "knowledge", "stats", "spaces", "literature", "base_rates", "evidence"},
     "manuscript": {"exceptions", "knowledge"},
-    "reports": {"exceptions", "knowledge", "evidence", "calibration", "manuscript"},
+    "reports": {"exceptions", "whole_folder", "knowledge", "evidence", "calibration", "manuscript"},
     "cli": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "calibration", "manuscript", "reports"},
     "__init__": {
         "exceptions",
@@ -40,12 +41,13 @@ INSIDE = {
 }
 OUTSIDE = {
     "exceptions": set(),
+    "whole_folder": set(),
     "knowledge": set(),
     "stats": {"numpy", "scipy"},
     "spaces": {"numpy", "nibabel", "nilearn"},
     "literature": {"numpy", "pandas"},
-    "base_rates": {"numpy", "pandas"},
-    "evidence": {"numpy", "pandas"},
+    "base_rates": {"numpy", "pandas", "scipy"},
+    "evidence": {"numpy", "pandas", "joblib"},
     "calibration": {"numpy", "joblib"},
     "manuscript": {"docx", "lxml", "pylatexenc", "pypdfium2"},
     "reports": {"rich", "matplotlib", "jinja2", "markupsafe", "joblib"},

@@ -6,6 +6,7 @@ locations each study hits. Blocks of peaks keep memory bounded; distances are ex
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 
 import numpy as np
@@ -13,7 +14,7 @@ from numpy.typing import NDArray
 
 from revinf.spaces.spheres import squared_tenths
 
-__all__ = ["BACKGROUND_RADIUS_MM", "SPACING_TENTHS", "Background", "compute_background"]
+__all__ = ["BACKGROUND_RADIUS_MM", "SPACING_TENTHS", "Background", "compute_background", "marked_studies"]
 
 BACKGROUND_RADIUS_MM = 10.0
 """The radius for which `build` stores the background."""
@@ -97,11 +98,39 @@ def compute_background(
     >>> background.location_hits.tolist(), background.study_locations.tolist()
     ([1, 1, 0], [2, 0])
     """
+    location_hits = np.zeros(len(grid_tenths), dtype=np.int64)
+    study_locations = np.zeros(n_studies, dtype=np.int32)
+    for first, here in marked_studies(peak_tenths, peak_study, n_studies, grid_tenths, radius_mm, spacing_tenths):
+        location_hits += here.sum(axis=0)
+        last = min(first + len(here), n_studies)
+        study_locations[first:last] = here.sum(axis=1)[: last - first]
+    return Background(location_hits=location_hits.astype(np.int32), study_locations=study_locations)
+
+
+def marked_studies(
+    peak_tenths: NDArray[np.int16],
+    peak_study: NDArray[np.int32],
+    n_studies: int,
+    grid_tenths: NDArray[np.int16],
+    radius_mm: float,
+    spacing_tenths: int,
+) -> Iterator[tuple[int, NDArray[np.bool_]]]:
+    """Yield blocks of studies with the locations whose sphere each of them hits.
+
+    Parameters
+    ----------
+    peak_tenths, peak_study, n_studies, grid_tenths, radius_mm, spacing_tenths
+        As for `compute_background`.
+
+    Yields
+    ------
+    int, (64, G) bool array
+        The first study of a block, and a row a study; rows beyond the last study, and blocks of studies without
+        a peak, hit nothing. Blocks without any peak are left out.
+    """
     order = np.argsort(peak_study, kind="stable")
     peaks, studies = np.asarray(peak_tenths)[order].astype(np.int64), np.asarray(peak_study)[order].astype(np.int64)
     stamp = _Stamp.of(np.asarray(grid_tenths, dtype=np.int64), peaks, radius_mm, spacing_tenths)
-    location_hits = np.zeros(len(grid_tenths), dtype=np.int64)
-    study_locations = np.zeros(n_studies, dtype=np.int32)
     # One row a study: a cell that several of its peaks reach is marked once.
     marked = np.zeros((_STUDIES, stamp.size), dtype=bool)
     for first in range(0, n_studies, _STUDIES):
@@ -112,12 +141,8 @@ def compute_background(
             part = slice(low, min(low + _PEAKS, stop))
             rows = (studies[part] - first) * stamp.size
             marked.reshape(-1)[(rows + stamp.cell[part])[:, None] + stamp.table[stamp.row[part]]] = True
-        here = marked[:, stamp.grid]
-        location_hits += here.sum(axis=0)
-        last = min(first + _STUDIES, n_studies)
-        study_locations[first:last] = here.sum(axis=1)[: last - first]
+        yield first, marked[:, stamp.grid]
         marked[:] = False
-    return Background(location_hits=location_hits.astype(np.int32), study_locations=study_locations)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)

@@ -1,30 +1,24 @@
 """Writes a literature folder as a whole or not at all, and opens one without trusting it.
 
-Arrays are plain .npy files, memory-mapped and never pickled. A folder is written beside its target and
-renamed into place; what an interrupted build leaves behind is removed by the next one.
+Arrays are plain .npy files, memory-mapped and never pickled.
 """
 
 from __future__ import annotations
 
-import glob
 import hashlib
 import json
-import os
-import shutil
-import tempfile
 import warnings
-from collections.abc import Callable, Iterator
-from contextlib import contextmanager
 from pathlib import Path
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from revinf.exceptions import InputFileError, LiteratureError
+from revinf.exceptions import LiteratureError
 from revinf.literature.kept_calibration import FILE as CALIBRATION
 from revinf.literature.manifest import MANIFEST, ArrayEntry, Manifest, read_manifest
 from revinf.literature.packing import ARRAY_TYPES, Arrays
+from revinf.whole_folder import replacing
 
 __all__ = ["array_entries", "open_arrays", "verify_arrays", "write_folder"]
 
@@ -67,61 +61,23 @@ def write_folder(target: Path, arrays: Arrays, manifest: Manifest) -> None:
     InputFileError
         If the target exists and is not a literature, or cannot be written.
     """
-    with replacing(target, _is_literature) as beside:
+    with replacing(target, _refusal) as beside:
         for name, array in arrays.items():
             np.save(beside / f"{name}.npy", np.ascontiguousarray(array), allow_pickle=False)
         (beside / MANIFEST).write_text(manifest.to_json(), encoding="utf-8")
 
 
-@contextmanager
-def replacing(target: Path, may_replace: Callable[[Path], bool]) -> Iterator[Path]:
-    """Give a fresh folder beside `target`; on success rename it into place, else remove it."""
-    target = Path(os.path.abspath(target))
-    if target.exists() and not may_replace(target):
-        raise InputFileError("something that is not a literature stands here; give --out another name", path=target)
-    beside: Path | None = None
-    try:
-        target.parent.mkdir(parents=True, exist_ok=True)
-        _sweep(target)
-        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.building-", dir=target.parent))
-        beside.chmod(0o777 & ~_umask())
-        yield beside
-        if target.exists():
-            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.old-", dir=target.parent))
-            target.rename(old / target.name)
-            beside.rename(target)
-            shutil.rmtree(old)
-        else:
-            beside.rename(target)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place with --out", path=target
-        ) from None
-    finally:
-        if beside is not None and beside.exists():
-            shutil.rmtree(beside, ignore_errors=True)
-
-
-def _umask() -> int:
-    """Return the user's file mode mask (mkdtemp makes folders private, a result is not)."""
-    mask = os.umask(0)
-    os.umask(mask)
-    return mask
-
-
-def _sweep(target: Path) -> None:
-    """Remove what interrupted builds of this target left beside it."""
-    for beginning in (f".{target.name}.building-", f".{target.name}.old-"):
-        for litter in target.parent.glob(glob.escape(beginning) + "*"):
-            shutil.rmtree(litter, ignore_errors=True)
-
-
-def _is_literature(folder: Path) -> bool:
-    """Tell whether a folder may be replaced: empty, or nothing in it but parts of a literature.
+def _refusal(folder: Path) -> str | None:
+    """Say why a folder must not be replaced; None for an empty one, or one with nothing but parts of a literature.
 
     A damaged literature may be (building again is its only cure); a folder in which somebody keeps a file
     of his own, or another program's literature.json, may not.
     """
+    return None if _is_literature(folder) else "something that is not a literature stands here; give --out another name"
+
+
+def _is_literature(folder: Path) -> bool:
+    """Tell whether nothing but parts of a literature stands in a folder."""
     if not folder.is_dir():
         return False
     names = {entry.name for entry in folder.iterdir()}

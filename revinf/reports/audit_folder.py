@@ -2,19 +2,16 @@
 
 from __future__ import annotations
 
-import os
 import re
-import shutil
-import tempfile
 from collections.abc import Callable
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 from revinf.evidence.audit import checked_readers
-from revinf.exceptions import InputFileError
 from revinf.reports.audit_markdown import audit_markdown, author_markdown, reviewer_markdown
 from revinf.reports.audit_tables import audit_csv, audit_jsonl
 from revinf.reports.html_report import html_text
+from revinf.whole_folder import replacing
 
 if TYPE_CHECKING:
     from revinf.evidence.audit import Audit
@@ -61,37 +58,18 @@ def write_audit_folder(
         If the target is something else than an audit, or cannot be written.
     """
     readers = checked_readers(readers)
-    target = Path(os.path.realpath(out))
-    if target.exists() and not (target.is_dir() and ((target / _MARK).is_file() or not any(target.iterdir()))):
-        raise InputFileError("something that is not an audit stands here; give --out another name", path=out)
-    foreign = sorted(path.name for path in target.glob("*") if not _is_ours(path)) if target.is_dir() else []
+    with replacing(out, _refusal) as beside:
+        return _fill(audit, beside, readers, command, progress)
+
+
+def _refusal(target: Path) -> str | None:
+    """Say why a folder must not be replaced; None for an empty one, or an audit of ours and nothing else."""
+    if not (target.is_dir() and ((target / _MARK).is_file() or not any(target.iterdir()))):
+        return "something that is not an audit stands here; give --out another name"
+    foreign = sorted(path.name for path in target.iterdir() if not _is_ours(path))
     if foreign:
-        raise InputFileError(
-            f"the older audit here also holds {foreign[0]!r}, which would be lost; move it, or choose another --out",
-            path=out,
-        )
-    beside: Path | None = None
-    try:
-        target.parent.mkdir(parents=True, exist_ok=True)
-        _sweep(target)
-        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
-        names = _fill(audit, beside, readers, command, progress)
-        beside.chmod(0o777 & ~_umask())  # as any folder that the user makes; until now it was private
-        if target.exists():
-            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.audit-{os.getpid()}-", dir=target.parent))
-            target.rename(old / "old")
-            beside.rename(target)
-            shutil.rmtree(old)
-        else:
-            beside.rename(target)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place with --out", path=out
-        ) from None
-    finally:
-        if beside is not None and beside.exists():
-            shutil.rmtree(beside, ignore_errors=True)
-    return names
+        return f"the older audit here also holds {foreign[0]!r}, which would be lost; move it, or choose another --out"
+    return None
 
 
 def _is_ours(path: Path) -> bool:
@@ -103,37 +81,6 @@ def _is_ours(path: Path) -> bool:
         )
         is not None
     )
-
-
-def _sweep(target: Path) -> None:
-    """Remove what a killed run left behind, but not what a living one is writing."""
-    for litter in target.parent.glob(f".{_escaped(target.name)}.audit-*"):
-        found = re.search(r"\.audit-(\d+)-", litter.name)
-        if found is None or not _is_alive(int(found[1])):
-            shutil.rmtree(litter, ignore_errors=True)
-
-
-def _is_alive(process: int) -> bool:
-    """Tell whether a process runs."""
-    try:
-        os.kill(process, 0)
-    except ProcessLookupError:
-        return False
-    except OSError:
-        return True
-    return process != os.getpid()
-
-
-def _umask() -> int:
-    """Return the user's mask for new files."""
-    mask = os.umask(0)
-    os.umask(mask)
-    return mask
-
-
-def _escaped(name: str) -> str:
-    """Return a file name with its wildcards taken literally."""
-    return "".join(f"[{character}]" if character in "*?[" else character for character in name)
 
 
 def _fill(

@@ -3,16 +3,13 @@
 from __future__ import annotations
 
 import json
-import os
-import shutil
-import tempfile
 from collections.abc import Callable, Iterable
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from revinf.exceptions import InputFileError
 from revinf.reports.brain_map_figure import write_brain_map_figure
 from revinf.reports.cells import file_name
+from revinf.whole_folder import replacing
 
 if TYPE_CHECKING:
     from revinf.evidence.brain_map import BrainMap
@@ -42,7 +39,7 @@ def write_brain_map(found: BrainMap, out: str | Path) -> list[str]:
     InputFileError
         If the target is something else than a map, or cannot be written.
     """
-    return _written(Path(os.path.realpath(out)), lambda folder: _fill(found, folder))
+    return _written(Path(out), lambda folder: _fill(found, folder))
 
 
 def write_brain_maps(
@@ -84,7 +81,7 @@ def write_brain_maps(
                 progress(done, of)
         (folder / _MARK).write_text(json.dumps({"schema": "revinf/maps/1", "maps": names}, indent=1) + "\n")
 
-    return _written(Path(os.path.realpath(out)), fill)
+    return _written(Path(out), fill)
 
 
 def _fill(found: BrainMap, folder: Path) -> None:
@@ -97,33 +94,15 @@ def _fill(found: BrainMap, folder: Path) -> None:
 
 
 def _written(target: Path, fill: Callable[[Path], None]) -> list[str]:
-    """Fill a folder beside the target and rename it into place."""
-    if target.exists() and not _may_replace(target):
-        raise InputFileError("something that is not a map stands here; give --out another name", path=target)
-    beside: Path | None = None
-    try:
-        target.parent.mkdir(parents=True, exist_ok=True)
-        beside = Path(tempfile.mkdtemp(prefix=f".{target.name}.map-", dir=target.parent))
+    """Fill a folder beside the target and put it in place."""
+    with replacing(target, _refusal) as beside:
         fill(beside)
-        mask = os.umask(0)
-        os.umask(mask)
-        beside.chmod(0o777 & ~mask)
-        names = sorted(path.name for path in beside.iterdir())
-        if target.exists():
-            old = Path(tempfile.mkdtemp(prefix=f".{target.name}.map-", dir=target.parent))
-            target.rename(old / "old")
-            beside.rename(target)
-            shutil.rmtree(old)
-        else:
-            beside.rename(target)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place with --out", path=target
-        ) from None
-    finally:
-        if beside is not None and beside.exists():
-            shutil.rmtree(beside, ignore_errors=True)
-    return names
+        return sorted(path.name for path in beside.iterdir())
+
+
+def _refusal(target: Path) -> str | None:
+    """Say why a folder must not be replaced; None for an empty one, or a map of ours and nothing else."""
+    return None if _may_replace(target) else "something that is not a map stands here; give --out another name"
 
 
 def _may_replace(target: Path) -> bool:

@@ -12,7 +12,7 @@ from revinf.exceptions import InputFileError
 from revinf.literature.literature import Literature
 from revinf.literature.manifest import MANIFEST
 from revinf.literature.packing import ARRAY_TYPES
-from revinf.literature.store import array_entries, open_arrays, replacing, write_folder
+from revinf.literature.store import array_entries, open_arrays, write_folder
 
 
 def content(folder):
@@ -55,38 +55,6 @@ def test_a_failure_in_the_middle_of_writing_leaves_the_old_literature_and_no_lit
         write_folder(tmp_path / "new", spoiled, manifest)
     assert content(tmp_path) == before
     assert [path.name for path in tmp_path.iterdir()] == ["literature"]
-
-
-@pytest.mark.parametrize("stop", [KeyboardInterrupt, MemoryError, RuntimeError])
-def test_an_interruption_leaves_the_old_literature_and_no_litter(copy, tmp_path, stop):
-    before = content(tmp_path)
-
-    def interrupted():
-        with replacing(copy, lambda _folder: True) as beside:
-            (beside / "half").write_text("half")
-            raise stop
-
-    with pytest.raises(stop):
-        interrupted()
-    assert content(tmp_path) == before
-    assert [path.name for path in tmp_path.iterdir()] == ["literature"]
-
-
-def test_the_next_build_sweeps_what_an_interrupted_one_left(building, tmp_path):
-    for name in (".literature.building-x1y2z3a4", ".literature.old-x1y2z3a4"):
-        (tmp_path / name).mkdir()
-        (tmp_path / name / "peak_study.npy").write_bytes(b"half")
-    (tmp_path / ".other.building-x1y2z3a4").mkdir()  # not of this target
-    building("study,x,y,z\na,1,-2,3\n")
-    hidden = [path.name for path in tmp_path.iterdir() if path.name.startswith(".")]
-    assert hidden == [".other.building-x1y2z3a4"]
-
-
-def test_a_name_with_wildcards_sweeps_only_its_own(building, tmp_path):
-    for name in (".lit[ab].building-x1y2z3a4", ".lita.building-x1y2z3a4"):
-        (tmp_path / name).mkdir()
-    building("study,x,y,z\na,1,-2,3\n", out="lit[ab]")
-    assert [path.name for path in tmp_path.iterdir() if path.name[0] == "."] == [".lita.building-x1y2z3a4"]
 
 
 def test_an_older_literature_is_replaced_as_a_whole(building, tmp_path):

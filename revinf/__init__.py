@@ -25,12 +25,14 @@ if TYPE_CHECKING:
     from revinf.evidence.assess import assess
     from revinf.evidence.assessment import Assessment
     from revinf.evidence.audit import Audit, audit
-    from revinf.evidence.brain_map import BrainMap, map_term
+    from revinf.evidence.brain_map import BrainMap
     from revinf.evidence.choices import Choices
     from revinf.evidence.claim import Claim
     from revinf.evidence.claims_table import claims_from_frame, read_claims
     from revinf.evidence.comparison import Comparison, compare
     from revinf.evidence.map_peaks import map_peaks
+    from revinf.evidence.map_term import map_term
+    from revinf.evidence.map_terms import TermHits, hits_of_terms, map_terms
     from revinf.evidence.profile import Profile, profile
     from revinf.evidence.settle import settle
     from revinf.evidence.settlement import Settlement
@@ -62,6 +64,7 @@ __all__ = [
     "Profile",
     "Scan",
     "Settlement",
+    "TermHits",
     "__version__",
     "assess",
     "audit",
@@ -70,9 +73,11 @@ __all__ = [
     "choose_source",
     "claims_from_frame",
     "compare",
+    "hits_of_terms",
     "leave_out",
     "map_peaks",
     "map_term",
+    "map_terms",
     "profile",
     "read_claims",
     "read_document",
@@ -86,7 +91,10 @@ _HOMES = {
     "BrainMap": "revinf.evidence.brain_map",
     "Comparison": "revinf.evidence.comparison",
     "compare": "revinf.evidence.comparison",
-    "map_term": "revinf.evidence.brain_map",
+    "map_term": "revinf.evidence.map_term",
+    "map_terms": "revinf.evidence.map_terms",
+    "hits_of_terms": "revinf.evidence.map_terms",
+    "TermHits": "revinf.evidence.map_terms",
     "Calibration": "revinf.calibration.summaries",
     "Settlement": "revinf.evidence.settlement",
     "calibrate": "revinf.calibration.calibrate",

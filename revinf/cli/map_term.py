@@ -29,6 +29,10 @@ def map_term(
     every: Annotated[
         bool, typer.Option("--all-terms", help="Map every process of the literature, a sub-folder each.")
     ] = False,
+    hits_only: Annotated[
+        bool,
+        typer.Option("--hits-only", help="With --all-terms: only the counts, in one volume."),
+    ] = False,
     literature: LiteratureFolder = None,
     without: Without = None,
     spacing: Annotated[float, typer.Option("--spacing", metavar="MM", help="Of the points, 2 or 4 mm.")] = 4.0,
@@ -45,20 +49,24 @@ def map_term(
 
     Example: revinf map --term "theory of mind" --literature literature --out map
     """
-    from revinf.evidence.brain_map import map_term as one
-    from revinf.evidence.brain_map import map_terms
     from revinf.evidence.choices import choices_of
     from revinf.evidence.claim import checked_prior
+    from revinf.evidence.map_term import map_term as one
+    from revinf.evidence.map_terms import hits_of_terms, map_terms
     from revinf.evidence.source_choice import choose_source, named_or_every
-    from revinf.reports.brain_map_folder import write_brain_map, write_brain_maps
-    from revinf.reports.brain_map_screen import brain_map_screen
+    from revinf.reports.brain_map_folder import write_brain_map, write_brain_maps, write_term_hits
+    from revinf.reports.brain_map_screen import brain_map_screen, term_hits_screen
     from revinf.reports.progress import counting
     from revinf.reports.terminal import show
 
-    named = named_or_every(term, every)
+    named = named_or_every(term, every, hits_only)
     choices = choices_of(level=level, ratio_prior=ratio_prior, ratio_limit=ratio_prior_limit, kinds=kinds)
     source = choose_source(literature, None, os.environ, without or ())
     asked = checked_prior(prior)
+    if hits_only:
+        counts = hits_of_terms(source, spacing_mm=spacing, radius_mm=radius, choices=choices)
+        show(*term_hits_screen(counts, str(out), write_term_hits(counts, out)))
+        return
     if named is None:
         maps = map_terms(source, spacing_mm=spacing, radius_mm=radius, prior=asked, choices=choices)
         with counting("mapping terms") as progress:

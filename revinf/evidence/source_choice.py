@@ -88,13 +88,13 @@ def choose_source(
     return TableSource(shipped, study_is="experiments", shipped=True)
 
 
-def named_or_every(term: str | None, every: bool) -> str | None:
+def named_or_every(term: str | None, every: bool, hits_only: bool = False) -> str | None:
     """Return the term that is asked for, or None for all of them.
 
     Raises
     ------
     InvalidClaimError
-        If both or neither are asked for.
+        If both or neither are asked for, or only hits of one term.
 
     Examples
     --------
@@ -103,6 +103,8 @@ def named_or_every(term: str | None, every: bool) -> str | None:
     """
     if (term is not None) == every:
         raise InvalidClaimError("name one term with --term, or ask for --all-terms")
+    if hits_only and not every:
+        raise InvalidClaimError("--hits-only counts every process; ask for it with --all-terms")
     return term
 
 

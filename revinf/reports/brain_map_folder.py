@@ -2,21 +2,23 @@
 
 from __future__ import annotations
 
+import csv
 import json
 from collections.abc import Callable, Iterable
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 from revinf.reports.brain_map_figure import write_brain_map_figure
-from revinf.reports.cells import file_name
+from revinf.reports.cells import csv_cell, file_name
 from revinf.whole_folder import replacing
 
 if TYPE_CHECKING:
     from revinf.evidence.brain_map import BrainMap
+    from revinf.evidence.map_terms import TermHits
 
-__all__ = ["write_brain_map", "write_brain_maps"]
+__all__ = ["write_brain_map", "write_brain_maps", "write_term_hits"]
 
-_MARK = "map.json"
+_MARK, _TERMS = "map.json", "terms.csv"
 
 
 def write_brain_map(found: BrainMap, out: str | Path) -> list[str]:
@@ -84,12 +86,52 @@ def write_brain_maps(
     return _written(Path(out), fill)
 
 
+def write_term_hits(found: TermHits, out: str | Path) -> list[str]:
+    """Write the counts of every process: volumes, the table of terms, and a sidecar.
+
+    Parameters
+    ----------
+    found : TermHits
+        From `revinf.hits_of_terms`.
+    out : path
+        A folder; an older map there is replaced as a whole.
+
+    Returns
+    -------
+    list of str
+        Names of the files.
+
+    Raises
+    ------
+    InputFileError
+        If the target is something else than a map, or cannot be written.
+    """
+
+    def fill(folder: Path) -> None:
+        for name, chunks in found.volumes():
+            with (folder / name).open("wb") as stream:
+                stream.writelines(chunks)
+        with (folder / _TERMS).open("w", encoding="utf-8", newline="") as stream:
+            table = csv.writer(stream, lineterminator="\n")
+            table.writerow(["volume", "term", "n_studies"])
+            for number, (term, total) in enumerate(zip(found.terms, found.n_term.tolist(), strict=True)):
+                table.writerow([number, csv_cell(term), total])
+        _write_sidecar(found.to_dict(), folder)
+
+    return _written(Path(out), fill)
+
+
+def _write_sidecar(content: dict[str, Any], folder: Path) -> None:
+    """Write what a folder holds."""
+    text = json.dumps(content, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+    (folder / _MARK).write_text(text, encoding="utf-8")
+
+
 def _fill(found: BrainMap, folder: Path) -> None:
     """Write the files of one map into a folder."""
     for name, content in found.volumes():
         (folder / name).write_bytes(content)
-    text = json.dumps(found.to_dict(), indent=2, ensure_ascii=False, allow_nan=False) + "\n"
-    (folder / _MARK).write_text(text, encoding="utf-8")
+    _write_sidecar(found.to_dict(), folder)
     write_brain_map_figure(found, folder / "map.png")
 
 
@@ -118,4 +160,5 @@ def _may_replace(target: Path) -> bool:
         return False
     if schema == "revinf/maps/1":
         return all((target / name).is_dir() or name == _MARK for name in names)
-    return schema == "revinf/map/1" and all(name.endswith(".nii.gz") or name in (_MARK, "map.png") for name in names)
+    known = {"revinf/map/1": (_MARK, "map.png"), "revinf/hits/1": (_MARK, _TERMS)}.get(schema)
+    return known is not None and all(name.endswith(".nii.gz") or name in known for name in names)

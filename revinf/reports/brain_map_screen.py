@@ -11,8 +11,9 @@ from revinf.reports.wording import NO_INDIVIDUALS
 
 if TYPE_CHECKING:
     from revinf.evidence.brain_map import BrainMap
+    from revinf.evidence.map_terms import TermHits
 
-__all__ = ["brain_map_screen"]
+__all__ = ["brain_map_screen", "term_hits_screen"]
 
 _PLACES = 5
 
@@ -72,3 +73,34 @@ def brain_map_screen(found: BrainMap | None, where: str, names: list[str]) -> li
         hanging([("", "")]),
         hanging([("", NO_INDIVIDUALS)], label_width=0),
     ]
+
+
+def term_hits_screen(found: TermHits, where: str, names: list[str]) -> list[Any]:
+    """Return the screen of the counts of all processes.
+
+    Parameters
+    ----------
+    found : TermHits
+        The counts.
+    where : str
+        The folder.
+    names : list of str
+        What was written into it.
+
+    Returns
+    -------
+    list
+        Renderables.
+    """
+    facts = found.literature
+    rows = [
+        ("Counted", f"{count(len(found.terms))} processes at {count(len(found.grid_tenths))} points of grey matter"),
+        ("Counted in", f"{one_line(facts.name)} (here: {one_line(facts.study_is)})"),
+    ]
+    if facts.invented:
+        rows.append(("", "INVENTED DATA: these numbers say nothing about any brain"))
+    rows += [
+        ("Written", f"{where}: {', '.join(names)}"),
+        ("Next", "counts alone are no evidence; revinf map --term gives ratio, posterior and interval of one process"),
+    ]
+    return [hanging(rows), hanging([("", "")]), hanging([("", NO_INDIVIDUALS)], label_width=0)]

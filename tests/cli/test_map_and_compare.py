@@ -32,6 +32,20 @@ def test_map_keeps_off_what_is_not_its_own(revinf, literature: Path, tmp_path: P
     assert (tmp_path / "mine.txt").read_text(encoding="utf-8") == "mine"
 
 
+def test_map_counts_all_processes_into_one_volume(revinf, refused, literature: Path, tmp_path: Path) -> None:
+    asked = ("map", "--all-terms", "--hits-only", "--literature", literature, "--out", tmp_path / "hits")
+    for _ in range(2):  # the second time it replaces its own
+        done = revinf(*asked)
+        assert (done.exit_code, done.stderr) == (0, "")
+    assert "INVENTED DATA" in done.stdout
+    files = {"hits.nii.gz", "active.nii.gz", "mask.nii.gz", "terms.csv", "map.json"}
+    assert {path.name for path in (tmp_path / "hits").iterdir()} == files
+    terms = (tmp_path / "hits" / "terms.csv").read_text(encoding="utf-8").splitlines()
+    assert terms[0] == "volume,term,n_studies"
+    assert len(terms) - 1 == json.loads((tmp_path / "hits" / "map.json").read_text(encoding="utf-8"))["n_terms"]
+    assert "--all-terms" in refused("map", "--term", "fear", "--hits-only", "--literature", literature, "--out", "m")
+
+
 def test_map_wants_one_term_or_all(refused, literature: Path) -> None:
     assert "--all-terms" in refused("map", "--literature", literature, "--out", "map")
     assert "prior must" in refused("map", "--term", "fear", "--prior", "2", "--literature", literature, "--out", "m")

@@ -11,8 +11,10 @@ import numpy as np
 import pytest
 
 from revinf.evidence.assess import assess
-from revinf.evidence.brain_map import FILES, BrainMap, map_term, map_terms
+from revinf.evidence.brain_map import FILES, BrainMap
 from revinf.evidence.claim import Claim
+from revinf.evidence.map_term import map_term
+from revinf.evidence.map_terms import hits_of_terms, map_terms
 from revinf.evidence.source_choice import choose_source
 from revinf.exceptions import InvalidClaimError, SpaceError, UnknownTermError
 from revinf.literature.literature import Literature
@@ -64,6 +66,34 @@ def test_every_process_is_mapped_in_turn(open_literature: Literature) -> None:
     alone = map_term("navigation", open_literature, spacing_mm=4.0)
     assert all(np.array_equal(one.values[name], alone.values[name]) for name in alone.values)
     json.dumps(one.to_dict(), allow_nan=False)
+
+
+def test_counts_of_all_processes_are_those_of_each_map(open_literature: Literature) -> None:
+    found = hits_of_terms(open_literature, spacing_mm=4.0)
+    assert "navigation" in found.terms
+    assert "verbal material" not in found.terms  # no process
+    for term in ("navigation", "theory of mind"):
+        alone = map_term(term, open_literature, spacing_mm=4.0)
+        row = found.terms.index(term)
+        assert np.array_equal(found.hits[row], alone.values["hits"])
+        assert found.n_term[row] == alone.n_term
+        assert np.array_equal(found.active, alone.values["active"])
+    packed = {name: b"".join(chunks) for name, chunks in found.volumes()}
+    series = nib.Nifti1Image.from_bytes(gzip.decompress(packed["hits.nii.gz"]))
+    mask = np.asarray(nib.Nifti1Image.from_bytes(gzip.decompress(packed["mask.nii.gz"])).dataobj) > 0
+    assert series.shape == (*mask.shape, len(found.terms))
+    assert np.array_equal(series.affine, nib.Nifti1Image.from_bytes(gzip.decompress(packed["active.nii.gz"])).affine)
+    voxels = np.rint(np.linalg.inv(series.affine) @ np.c_[found.grid_tenths / 10, np.ones(len(found.grid_tenths))].T)
+    volume = np.asarray(series.dataobj)[..., row]
+    assert np.array_equal(volume[tuple(voxels[:3].astype(int))], found.hits[row])
+    assert not volume[~mask].any()
+
+
+def test_solving_in_other_processes_changes_no_digit(open_literature: Literature, monkeypatch) -> None:
+    plain = {item.term: item for _, _, item in map_terms(open_literature)}
+    monkeypatch.setattr("revinf.evidence.map_terms._MANY_TABLES", 0)
+    for _, _, item in map_terms(open_literature):
+        assert all(np.array_equal(item.values[name], plain[item.term].values[name]) for name in item.values)
 
 
 def test_strongest_places_do_not_overlap(found: BrainMap) -> None:

@@ -27,7 +27,9 @@ def antecedent(sentence: Reading, before: Reading | None, cue: CueMention) -> tu
     if (
         before is None
         or not before.places
-        or not (ACTIVITY.search(before.text + sentence.text) or _FOUND.search(sentence.text))
+        or not (
+            ACTIVITY.search(before.text + sentence.text) or _FOUND.search(sentence.text) or cue.direction == "conclude"
+        )
     ):
         return [], False
     points_back = ANAPHOR.search(sentence.text[: cue.end]) or cue.direction in ("conclude", "therefore")

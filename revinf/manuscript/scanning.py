@@ -8,13 +8,14 @@ from dataclasses import replace
 from revinf.manuscript.cues import find_cues
 from revinf.manuscript.document import Block, Document
 from revinf.manuscript.found import FoundClaim, FoundSentence, LinkedPlace, Scan
-from revinf.manuscript.inference import Inference, Reading
+from revinf.manuscript.inference import Inference, Reading, Statement
 from revinf.manuscript.linking import FoundTriple, Link, link_place, owners
 from revinf.manuscript.peaks_labels import labelled_place
 from revinf.manuscript.phrases import Token, tokens
 from revinf.manuscript.places import PlaceMention, defined_places, find_places
 from revinf.manuscript.processes import ProcessMention, ProcessNames, defined_processes, shipped_processes
 from revinf.manuscript.sentences import split_sentences
+from revinf.manuscript.side_by_side import side_by_side
 from revinf.manuscript.statements import read_statement
 from revinf.manuscript.table_peaks import table_peak
 from revinf.manuscript.triples import find_triples, space_said
@@ -69,7 +70,7 @@ def scan(document: Document, *, peaks: Sequence[FoundTriple] = (), terms: Iterab
                 location=location,
                 section=block.section,
                 reading=reading,
-                statement=read_statement(reading, before),
+                statement=_statement(reading, before, block),
                 triples=_triples_of(reading, number, location, space),
             )
         )
@@ -85,6 +86,18 @@ def scan(document: Document, *, peaks: Sequence[FoundTriple] = (), terms: Iterab
         triples=tuple(_in_order(document, sentences, in_tables)),
         sentences=tuple(sentences),
     )
+
+
+_NOT_OWN = frozenset(["introduction", "methods"])
+
+
+def _statement(reading: Reading, before: Reading | None, block: Block) -> Statement:
+    """Say what a sentence does; as a last resort, that its place and its process stand side by side."""
+    statement = read_statement(reading, before)
+    if statement.kind not in ("none", "forward") or block.section in _NOT_OWN:
+        return statement
+    steps = side_by_side(reading, before)
+    return Statement(kind="claim", inferences=tuple(steps)) if steps else statement
 
 
 def _processes(text: str, run: list[Token], names: ProcessNames, defined: dict[str, str]) -> list[ProcessMention]:

@@ -83,7 +83,8 @@ def split_sentences(text: str) -> list[tuple[int, str]]:
 def _goes_on(text: str, start: int, end: re.Match[str]) -> bool:
     """Tell whether what looks like an end is none."""
     if not end.group().startswith("."):
-        return False
+        # A question in brackets is a part of its sentence: "Fear (how else to explain it?) grew."
+        return ")" in end.group() and text.rfind("(", start, end.start()) > start
     following = text[end.end() :].lstrip().lstrip("\"'“‘([")[:1]
     word = re.search(r"[\w.]*$", text[start : end.start()])
     last = word.group().lower() if word else ""

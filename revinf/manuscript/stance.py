@@ -19,6 +19,13 @@ _LIKE_OTHERS = re.compile(
 """Opens "In line with earlier reports, the place suggests ...": the step is the author's own."""
 
 
+_REFUSED = re.compile(r"claim|conclu|infer|argu|proof|prove", re.IGNORECASE)
+"""Words of a refusal that holds for the whole clause it opens: "we make no claim that the peak ... indexes fear"."""
+
+_AUTHOR = re.compile(r"\W*[A-Z][\w'’-]+(?:\s+(?:and|&)\s+[A-Z][\w'’-]+|\s+et al\.?,?)?\s*[(\[](?:19|20)\d\d[a-z]?[)\]]")
+"""An author with a year as the subject of the sentence."""
+
+
 def is_hedged(sentence: Reading, cue: CueMention) -> bool:
     """Tell whether a step is made with reserve."""
     hedges = [other for other in sentence.cues if other.direction == "hedge"]
@@ -32,7 +39,8 @@ def is_declined(sentence: Reading, cue: CueMention) -> bool:
     for other in sentence.cues:
         if other.direction == "open" and other.start <= cue.end:
             return True
-        if other.direction == "negation" and other.start <= cue.end and cue.start - other.end < 45:
+        reach = 150 if _REFUSED.search(other.words) else 45
+        if other.direction == "negation" and other.start <= cue.end and cue.start - other.end < reach:
             between = sentence.text[other.end : cue.start] if other.end < cue.start else ""
             if not re.search(r"[,;:]\s|\bbut\b", between):
                 return True
@@ -56,6 +64,8 @@ def refused_from(sentence: Reading) -> float:
 
 def is_reported(sentence: Reading, cue: CueMention) -> bool:
     """Tell whether a step is the step of others."""
+    if _AUTHOR.match(sentence.text):
+        return True
     for other in sentence.cues:
         if other.direction != "report" or other.start > cue.end or _within(other, cue):
             continue

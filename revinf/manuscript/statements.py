@@ -15,24 +15,20 @@ from revinf.manuscript.cues import CueMention
 from revinf.manuscript.inference import Inference, Reading, Statement, StatementKind
 from revinf.manuscript.juxtaposition import juxtaposed
 from revinf.manuscript.places import PlaceMention
+from revinf.manuscript.process_side import processes_after, task_free
 from revinf.manuscript.processes import ProcessMention
 from revinf.manuscript.stance import is_declined, is_hedged, is_premise, is_reported, refused_from
 from revinf.manuscript.statement_patterns import (
     ACTIVITY,
     ANAPHOR,
-    DURING,
-    LABEL_OF,
-    STOP,
-    SUBJECT,
-    TASK_NOUN,
 )
 from revinf.manuscript.unlisted import named_after, named_clause
 
 __all__ = ["read_statement"]
 
 
-_IT = re.compile(r"\s+(?:it|this|so|that)\s*[.,;]")
-"""The object of "Fear was not rated, but the response implies it"."""
+_IT = re.compile(r"(?:\s+(?:it|this|so|that))?\s*(?:[.,;]|$)")
+"""The object of "Fear was not rated, but the response implies it", or none: "and the response is the proof"."""
 
 _LEAD = 12  # letters before a cue that opens its sentence: "Highly", "Also,"
 
@@ -108,7 +104,7 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
         if fronted:
             return fronted
         places, from_before = antecedent(sentence, before, cue)
-        processes = _after(sentence, cue.end)
+        processes = processes_after(sentence, cue.end)
         if cue.direction == "therefore" and processes and not _is_assertion(sentence, cue):
             return []
     elif cue.direction == "backwards":
@@ -121,10 +117,11 @@ def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[I
         return []
     processes = [process for process in processes if process.listed] or processes
     if not processes and cue.direction == "reverse" and _IT.match(sentence.text, cue.end):
-        processes = [process for process in sentence.processes if process.end <= places[0].start]
+        end = cue.start if from_before else places[0].start
+        processes = [process for process in sentence.processes if process.end <= end]
     linked = _linked_to(sentence, places, cue)
     if not processes and linked is not None:
-        processes = _after(sentence, linked)
+        processes = processes_after(sentence, linked)
     if not processes:
         unnamed = _unnamed(sentence, cue, linked)
         processes = [unnamed] if unnamed is not None and not _names_place(sentence, unnamed) else []
@@ -150,7 +147,7 @@ def _backwards(
         for process in sentence.processes
         if (process.end <= cue.start if comma is None else process.start >= comma)
     ]
-    return places, from_before, _task_free(sentence, processes)
+    return places, from_before, task_free(sentence, processes)
 
 
 def _comma_of_fronted(sentence: Reading, cue: CueMention) -> int | None:
@@ -194,59 +191,13 @@ def _fronted(sentence: Reading, cue: CueMention) -> list[Inference]:
     chosen, hedged = tuple(place_groups(sentence.text, places)[0]), is_hedged(sentence, cue)
     return [
         Inference(process=process, places=chosen, from_before=False, cue=cue, hedged=hedged)
-        for process in _task_free(sentence, processes)
+        for process in task_free(sentence, processes)
     ]
 
 
 def _names_place(sentence: Reading, words: ProcessMention) -> bool:
     """Tell whether words hold the name of a place: then the sentence speaks of it, not of a process."""
     return any(place.start < words.end and words.start < place.end for place in sentence.places)
-
-
-def _after(sentence: Reading, start: int) -> list[ProcessMention]:
-    """Return the processes that a cue leads to: those after it, up to where the thought turns."""
-    later = [process for process in sentence.processes if process.start >= start]
-    turn = STOP.search(sentence.text, start)
-    while turn and re.match(r"not only\b", sentence.text[turn.start() :], re.IGNORECASE):
-        turn = STOP.search(sentence.text, turn.end())
-    kept = [process for process in later if turn is None or process.start < turn.start()]
-    near = []
-    for process in kept:
-        # What matters is the clause that names the process: "from the response, that fear ...".
-        between = re.split(r"\bthat\b", sentence.text[start : process.start])[-1]
-        activity = ACTIVITY.search(between)
-        if activity and not LABEL_OF.search(between) and not _is_about_process(between):
-            continue
-        near.append(process)
-    return _task_free(sentence, near)
-
-
-def _is_about_process(between: str) -> bool:
-    """Tell whether activity words before a process only bring it in: "that viewers engaged in fear"."""
-    last = list(ACTIVITY.finditer(between))[-1]
-    return bool(
-        re.match(r"(?:engag\w*|recruit\w*|involvement|activ\w+|respon\w+)$", last.group(), re.IGNORECASE)
-        and re.fullmatch(
-            r"(?:\s+(?:in|of|the|a|an|some|to|their|his|her|its|with|own|more|covert|strong|by|\w+ly))*\s*",
-            between[last.end() :],
-        )
-    )
-
-
-def _task_free(sentence: Reading, processes: list[ProcessMention]) -> list[ProcessMention]:
-    """Leave out processes that only name the task, unless nothing else is there."""
-
-    def names_task(process: ProcessMention) -> bool:
-        following = sentence.text[process.end : process.end + 60]
-        return bool(TASK_NOUN.match(following) or DURING.search(sentence.text[: process.start]))
-
-    chosen = [process for process in processes if not names_task(process)]
-    chosen = [
-        process
-        for at, process in enumerate(chosen)
-        if not any(SUBJECT.match(sentence.text[process.end : other.start]) for other in chosen[at + 1 :])
-    ]
-    return chosen or processes[:1]
 
 
 def _is_assertion(sentence: Reading, cue: CueMention) -> bool:
@@ -282,7 +233,7 @@ def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
     hedged = is_hedged(sentence, cue)
     return [
         Inference(process=process, places=tuple(places), from_before=False, cue=cue, hedged=hedged)
-        for process in _task_free(sentence, [process for process in outside if process.listed] or outside)
+        for process in task_free(sentence, [process for process in outside if process.listed] or outside)
     ]
 
 

@@ -8,15 +8,15 @@ from dataclasses import dataclass
 __all__ = ["Triple", "find_triples", "space_said"]
 
 _MINUS = r"[-+\u2212\u2010\u2011\u2012\u2013\u2014\uff0d]"
-_NUMBER = rf"(?:{_MINUS}\s?)?\d{{1,3}}(?:\.\d{{1,2}})?"
+_NUMBER = rf"(?:{_MINUS}\s?|minus\s)?\d{{1,3}}(?:\.\d{{1,2}})?"
 _COMMA_NUMBER = rf"(?:{_MINUS}\s?)?\d{{1,3}}(?:,\d{{1,2}})?"
 _EDGE = r"(?<![\w.,/:\u2212\u2013-])(?<!\d\s)"
 _AFTER = r"(?![\w%°]|[.,]\d|\s?[/×]\s?\d|\s?(?:%|°))"
 _SEPARATOR = r"(?:\s?mm)?\s*[,;/|]\s*|\s+"
 
 _LABELLED = re.compile(
-    rf"\bx\s*[=:]\s*(?P<x>{_NUMBER})\s*(?:mm)?\s*[,;/]?\s*(?:and\s+)?y\s*[=:]\s*(?P<y>{_NUMBER})\s*(?:mm)?\s*[,;/]?\s*"
-    rf"(?:and\s+)?z\s*[=:]\s*(?P<z>{_NUMBER})",
+    rf"\bx\s*[=:]?\s*(?P<x>{_NUMBER})\s*(?:mm)?\s*[,;/]?\s*(?:and\s+)?y\s*[=:]?\s*(?P<y>{_NUMBER})\s*(?:mm)?\s*"
+    rf"[,;/]?\s*(?:and\s+)?z\s*[=:]?\s*(?P<z>{_NUMBER})",
     re.IGNORECASE,
 )
 _RUN = re.compile(
@@ -58,6 +58,12 @@ _BRAIN = re.compile(
     r"gyr|sulc|cort|lob[eu]|insul|amygd|hippoc|thalam|striat|caud|putam|pallid|cerebel|cuneus|cingul|junction|nucle|"
     r"\barea|\bpole|opercul|brain|\bpons|collic|vermis|accumbens|activ|respon|[A-Z]{2,}"
 )
+_PLACE_BEFORE = re.compile(rf"(?:{_BRAIN.pattern})\w*(?:\s*[:,]|[^()\[\]]{{0,20}}[(\[][^)\]]*[;,])\s*$")
+"""The name of a place right before plain numbers, or before the bracket in which they stand behind something else."""
+
+_NUMBERED = re.compile(r"\b(?:BAs?|Brodmann areas?|areas?|lobules?|weights?|(?:[nNk]|kE)\s*=)\s*:?\s*$", re.IGNORECASE)
+"""Right before a number that cannot be an x, whatever signs follow."""
+
 _SIDE = re.compile(r"\b[LR]\s*:\s*$")
 _COMPANY = 60
 """Letters between a triple that is sure and a plain one of the same look that it vouches for."""
@@ -158,7 +164,7 @@ def _open_bracket(before: str) -> str:
 
 def _value(text: str) -> float:
     """Return a number with any kind of minus sign, and a point or a comma."""
-    sign = -1.0 if re.match(r"[-\u2212\u2010\u2011\u2012\u2013\u2014\uff0d]", text) else 1.0
+    sign = -1.0 if re.match(r"minus|[-\u2212\u2010\u2011\u2012\u2013\u2014\uff0d]", text) else 1.0
     return sign * float(re.sub(r"[^\d.,]", "", text).replace(",", ".")) + 0.0
 
 
@@ -182,22 +188,24 @@ def _is_place(text: str, match: re.Match[str]) -> bool:
         return _STRONG.search(before[-45:]) is not None or (largest >= 10 and _BRAIN.search(before[-22:]) is not None)
     if _STRONG.search(before[-45:]) or (opened and named) or re.search(r"[(\[][A-Za-z-]{2,8}[;,:]\s*$", before):
         return True
+    rising = _value(match["x"]) < _value(match["y"]) < _value(match["z"])
+    if not rising and largest >= 10 and _PLACE_BEFORE.search(before[-50:]) and re.match(r"\s*[)\];,.]|\s*$", after):
+        return True
     if not re.search(r"[(\[]\s*$", before) or not re.match(r"\s*[)\];,]", after):
         return False
     # Three plain numbers alone in brackets: numbers that rise may cite, so a place must stand before them.
-    x, y, z = (_value(match[axis]) for axis in "xyz")
-    return not x < y < z or _BRAIN.search(before[-50:]) is not None
+    return not rising or _BRAIN.search(before[-50:]) is not None
 
 
 def _is_signed(match: re.Match[str]) -> bool:
     """Tell whether a number of a triple has a sign."""
-    return any(re.match(_MINUS, match[axis]) for axis in "xyz")
+    return any(re.match(rf"minus|{_MINUS}", match[axis]) for axis in "xyz")
 
 
 def _could_be(text: str, match: re.Match[str]) -> bool:
     """Tell whether nothing around three numbers says that they are statistics, sizes, counts, dates or citations."""
     before, after = text[max(0, match.start() - 60) : match.start()], text[match.end() : match.end() + 40]
-    if _COUNTED.match(after) or (_STATISTIC.search(before) and not _SIDE.search(before)):
+    if _COUNTED.match(after) or _NUMBERED.search(before) or (_STATISTIC.search(before) and not _SIDE.search(before)):
         return False
     if match.re is _RUN and not _alike(match["s"], match["t"]):
         return False

@@ -6,16 +6,20 @@ import argparse
 import platform
 import sys
 import tempfile
+from functools import partial
 from pathlib import Path
 
 import numpy as np
 import pandas as pd
 
 from revinf.base_rates.counting import count_hits
+from revinf.base_rates.point_counts import count_points
 from revinf.evidence.audit import audit
 from revinf.evidence.claim import Claim
+from revinf.literature.active_points import active_points
 from revinf.literature.background import compute_background
 from revinf.literature.literature import Literature
+from revinf.spaces.brain import grey_lattice
 from revinf.spaces.spheres import sphere
 from tests.benchmarks import baselines
 from tests.benchmarks.measure import Measured, function, process, python
@@ -120,6 +124,24 @@ def inside(where: Path, peaks: Path, annotations: Path) -> list[Row]:
         repeat=3,
     )
     rows.append(("background of the 4 mm grid", plain, ours, "KD-tree in a loop"))
+
+    points = grey_lattice(literature.brain, 4.0)
+    spheres = active_points(
+        arrays["peak_tenths"], arrays["peak_study"], literature.n_studies, points, 10.0, spacing_tenths=40
+    )
+    active = np.unpackbits(spheres, axis=1, count=len(points)).astype(np.int16)
+    labels = carries.T.tocsr().astype(np.int16)
+    plain = function(partial(baselines.blocked_product, labels, active), repeat=3)
+    ours = function(lambda: count_points(literature, points, 10.0, spacing_tenths=40), repeat=3)
+    rows.append(("counts of all terms on the 4 mm grid", plain, ours, "scipy sparse product, 256 columns a block"))
+    del active
+    for spacing in (4, 2):
+        words = ("map", "--all-terms", "--hits-only", "--spacing", spacing, "--literature", where)
+        ours = process(revinf(*words, "--out", where.parent / f"hits{spacing}"), repeat=1, warm=False)
+        rows.append((f"map --all-terms --hits-only, {spacing} mm", plain, ours, "that product at 4 mm"))
+    words = ("calibrate", "--jobs", -1, "--no-keep", "--literature", where, "--out", where.parent / "calibration")
+    ours = process(revinf(*words), repeat=1, warm=False)
+    rows.append(("calibrate, whole process", plain, ours, "(that product, for scale)"))
 
     claims = [
         Claim(id=str(at), term=TERM, peaks=[xyz[at].tolist()]) for at in random.integers(0, len(xyz), 20).tolist()

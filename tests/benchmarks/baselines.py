@@ -6,7 +6,7 @@ from pathlib import Path
 
 import numpy as np
 
-__all__ = ["pandas_all_terms", "pandas_read", "sparse_counts", "tree_background", "tree_sphere"]
+__all__ = ["blocked_product", "pandas_all_terms", "pandas_read", "sparse_counts", "tree_background", "tree_sphere"]
 
 
 def pandas_read(peaks: Path, annotations: Path) -> None:
@@ -52,3 +52,9 @@ def tree_background(xyz: np.ndarray, study: np.ndarray, grid: np.ndarray) -> np.
 def sparse_counts(hits: object, carries: object) -> object:
     """Count every term for many places: one sparse product."""
     return hits @ carries  # type: ignore[operator]
+
+
+def blocked_product(labels: object, active: np.ndarray) -> None:
+    """Count every term at every point, given where each study is active; nothing but the product."""
+    for start in range(0, active.shape[1], 256):
+        labels @ np.ascontiguousarray(active[:, start : start + 256])  # type: ignore[operator]

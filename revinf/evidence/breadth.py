@@ -103,6 +103,9 @@ def _above_own_rate(
     share = background.study_locations / len(background.location_hits)
     own_rate = studies.literature.term_means(share)
     positions = np.flatnonzero(is_process)
+    if level >= 0.5:  # then the lower end lies below the mean of the rate's Beta law, so few need to be solved
+        mean = (counts.term_active + 0.5) / (counts.term_total + 1)
+        positions = positions[mean[positions] > own_rate[positions]]
     rates = jeffreys_rates([(int(counts.term_active[i]), int(counts.term_total[i])) for i in positions], level=level)
     return sum(
         rate is not None and bool(rate.low > own_rate[position])

@@ -179,15 +179,15 @@ def _chosen(
     if not order:
         return []
     tail = (1 - level) / 2
-    known: dict[tuple[int, ...], NDArray[np.float64]] = {}
-    ends = []
-    for at in order:
-        counts = tuple(int(k) for k in hits[at])
-        if counts not in known:  # equal counts have equal intervals: each starts its own random numbers
-            generator = np.random.default_rng([_SEED, *counts])
-            drawn = generator.beta(hits[at] + 0.5, numbers - hits[at] + 0.5, size=(_DRAWS, len(numbers)))
-            known[counts] = np.quantile(expected_gain(weights, np.clip(drawn, 1e-12, 1 - 1e-12)), [tail, 1 - tail])
-        ends.append(known[counts])
+    # Equal counts have equal intervals: each starts its own random numbers.
+    counted = [tuple(hits[at].tolist()) for at in order]
+    distinct = {counts: row for row, counts in enumerate(dict.fromkeys(counted))}
+    drawn = np.empty((len(distinct), _DRAWS, len(numbers)))
+    for counts, row in distinct.items():
+        k = np.array(counts)
+        drawn[row] = np.random.default_rng([_SEED, *counts]).beta(k + 0.5, numbers - k + 0.5, size=drawn.shape[1:])
+    gained = expected_gain(weights, np.clip(drawn, 1e-12, 1 - 1e-12))
+    ends = np.quantile(gained, [tail, 1 - tail], axis=1).T[[distinct[counts] for counts in counted]]
     ranked = sorted(range(len(order)), key=lambda rank: (-ends[rank][0], -gains[order[rank]], rank))
     taken: list[int] = []
     for rank in ranked:

@@ -12,7 +12,7 @@ from revinf.exceptions import InputFileError
 from revinf.knowledge import normalise_term
 from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.refusals import ImportReport
-from revinf.literature.row_checks import Numbering, RowChecks, numbers, record_groups
+from revinf.literature.row_checks import Numbering, RowChecks, distinct, numbers, record_groups, trimmed
 from revinf.literature.rows import LINE, DelimitedFile, open_delimited
 
 if TYPE_CHECKING:
@@ -111,7 +111,7 @@ class _LabelReader:
         name = self.table.path.name
         self.report.read[name] += len(block)
         checks = RowChecks(block)
-        checks.refuse(block["study"].str.strip() == "", "empty study id")
+        checks.refuse(trimmed(block["study"]) == "", "empty study id")
         (self._take_long if self.long else self._take_wide)(block, checks)
         self.report.refuse(name, checks.refused_rows(self.table.delimiter))
         self.report.kept[name] += int(checks.fine.sum())
@@ -130,7 +130,7 @@ class _LabelReader:
         self.light += int((checks.fine & ~counts).sum())
         self.pairs.append(
             (
-                self.study_numbering.codes(block["study"][fine].str.strip()),
+                self.study_numbering.codes(trimmed(block["study"][fine])),
                 self.term_numbering.codes(terms[fine]),
             )
         )
@@ -146,7 +146,7 @@ class _LabelReader:
             checks.refuse(~np.isfinite(value) & (text != ""), f"column {column!r} is not a number")
             weights[:, position] = value  # NaN for an empty cell: it is above no minimum, not even 0
         row, column_index = np.nonzero(self._heavy(weights) & checks.fine[:, None])
-        study = self.study_numbering.codes(block["study"].str.strip().iloc[row])
+        study = self.study_numbering.codes(trimmed(block["study"]).iloc[row])
         terms = self._normalised(pd.Series(self.wide, dtype=str))
         code = self.term_numbering.codes(terms)
         self.pairs.append((study, code[column_index]))
@@ -158,9 +158,12 @@ class _LabelReader:
 
     def _normalised(self, text: pd.Series[str]) -> pd.Series[str]:
         """Return the terms as they are compared, remembering their spellings."""
-        spelled = {name: normalise_term(name) for name in text.unique()}
+        import pandas as pd
+
+        codes, cells = distinct(text)
+        spelled = {name: normalise_term(name) for name in cells}
         self.spellings.update(spelled)
-        return text.map(spelled)
+        return pd.Series([spelled[name] for name in cells], dtype=str).iloc[codes].set_axis(text.index)
 
     def finish(self) -> LabelRows:
         """Join the blocks and say what was noticed."""

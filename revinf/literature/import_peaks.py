@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from revinf.exceptions import SpaceError
 from revinf.literature.import_options import ImportOptions, Progress
 from revinf.literature.refusals import ImportReport
-from revinf.literature.row_checks import MINUS, Numbering, RowChecks, numbers, record_groups
+from revinf.literature.row_checks import MINUS, Numbering, RowChecks, distinct, numbers, record_groups, trimmed
 from revinf.literature.rows import LINE, DelimitedFile, open_delimited
 from revinf.spaces.coordinates import normalise_space, to_tenths
 from revinf.spaces.transforms import talairach_to_mni
@@ -109,7 +109,7 @@ class _PeakReader:
         name = self.table.path.name
         self.report.read[name] += len(block)
         checks = RowChecks(block)
-        study = block["study"].str.strip()
+        study = trimmed(block["study"])
         checks.refuse(study == "", "empty study id")
         xyz = np.column_stack([self._axis(block, axis, checks) for axis in _AXES])
         _refuse_outside(xyz, checks, "")
@@ -135,16 +135,17 @@ class _PeakReader:
 
     def _axis(self, block: pd.DataFrame, axis: str, checks: RowChecks) -> NDArray[np.float64]:
         """Return one coordinate in mm; refuse the rows where it is not a finite number."""
-        text = block[axis].str.strip()
-        self.counts["minus"] += int(text.str.startswith(MINUS).sum())
-        value = numbers(text)
+        codes, cells = distinct(block[axis])
+        cells = cells.str.strip()
+        self.counts["minus"] += int(cells.str.startswith(MINUS).to_numpy(dtype=bool)[codes].sum())
+        value = numbers(cells)
         missing = ~np.isfinite(value)
         if missing.any():
-            comma = text.str.fullmatch(rf"[-+{MINUS}]?\d+,\d+").to_numpy(dtype=bool)
-            checks.refuse(text == "", f"{axis} is empty")
-            checks.refuse(comma, f"{axis} has a decimal comma; write a decimal point")
-            checks.refuse(missing, f"{axis} is not a finite number")
-        return np.where(missing, 0.0, value)
+            comma = cells.str.fullmatch(rf"[-+{MINUS}]?\d+,\d+").to_numpy(dtype=bool)
+            checks.refuse((cells == "").to_numpy(dtype=bool)[codes], f"{axis} is empty")
+            checks.refuse(comma[codes], f"{axis} has a decimal comma; write a decimal point")
+            checks.refuse(missing[codes], f"{axis} is not a finite number")
+        return np.where(missing, 0.0, value)[codes]
 
     def _talairach(self, block: pd.DataFrame, checks: RowChecks) -> NDArray[np.bool_]:
         """Return which rows are in Talairach space; refuse the rows whose space is unknown."""
@@ -153,7 +154,7 @@ class _PeakReader:
         if "space" not in block.columns:
             self.counts["unstated"] += len(block)
             return np.zeros(len(block), dtype=bool)
-        stated = block["space"].str.strip()
+        stated = trimmed(block["space"])
         meaning: dict[str, str] = {"": "MNI152"}
         for text in stated.unique():
             try:

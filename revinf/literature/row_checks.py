@@ -15,7 +15,7 @@ from revinf.literature.rows import LINE
 if TYPE_CHECKING:
     import pandas as pd
 
-__all__ = ["MINUS", "Numbering", "RowChecks", "numbers", "record_groups"]
+__all__ = ["MINUS", "Numbering", "RowChecks", "distinct", "numbers", "record_groups", "trimmed"]
 
 MINUS = "\N{MINUS SIGN}"
 """What word processors and publishers put in place of a hyphen."""
@@ -80,13 +80,43 @@ class Numbering:
         return np.asarray(known, dtype=np.int32)[local] if len(known) else np.zeros(0, dtype=np.int32)
 
 
+def distinct(text: pd.Series[str]) -> tuple[NDArray[np.intp], pd.Series[str]]:
+    """Return the distinct cells, and for every row which one it holds: work on cells is done once for each.
+
+    Examples
+    --------
+    >>> import pandas as pd
+    >>> codes, cells = distinct(pd.Series(["b", "a", "b"]))
+    >>> codes.tolist(), cells.tolist()
+    ([0, 1, 0], ['b', 'a'])
+    """
+    import pandas as pd
+
+    codes, cells = pd.factorize(text)
+    return codes, pd.Series(cells, dtype=str)
+
+
+def trimmed(text: pd.Series[str]) -> pd.Series[str]:
+    """Return the cells without blanks around them.
+
+    Examples
+    --------
+    >>> import pandas as pd
+    >>> trimmed(pd.Series([" b", "a"], index=[5, 6])).to_dict()
+    {5: 'b', 6: 'a'}
+    """
+    codes, cells = distinct(text)
+    plain = cells.str.strip()
+    return text if plain.equals(cells) else plain.iloc[codes].set_axis(text.index)
+
+
 def numbers(text: pd.Series[str]) -> NDArray[np.float64]:
     """Return the cells as numbers, a typographic minus read as minus; NaN where a cell is not one."""
     import pandas as pd
 
-    if text.str.contains(MINUS, regex=False).any():
-        text = text.str.replace(MINUS, "-", regex=False)
-    return np.asarray(pd.to_numeric(text, errors="coerce"), dtype=np.float64)
+    codes, cells = distinct(text)
+    plain = cells.str.replace(MINUS, "-", regex=False)
+    return np.asarray(pd.to_numeric(plain, errors="coerce"), dtype=np.float64)[codes]
 
 
 def record_groups(known: dict[str, str], block: pd.DataFrame, column: str, path: Path) -> None:
@@ -100,7 +130,7 @@ def record_groups(known: dict[str, str], block: pd.DataFrame, column: str, path:
     if column not in block.columns:
         return
     pairs = block.drop_duplicates(["study", column])
-    cells = zip(pairs["study"].str.strip(), pairs[column].str.strip(), pairs[LINE], strict=True)
+    cells = zip(trimmed(pairs["study"]), trimmed(pairs[column]), pairs[LINE], strict=True)
     for study, group, line in cells:
         if group and known.setdefault(study, group) != group:
             raise InputFileError(

@@ -15,6 +15,8 @@ from numpy.typing import NDArray
 
 __all__ = ["panel_masses", "panel_nodes", "panel_quantiles"]
 
+_SMALL_STEP = 1e-9
+
 NODES = 12
 """Nodes a panel: a polynomial of degree 11 resolves a Gaussian over two standard deviations to 1e-10."""
 
@@ -120,22 +122,29 @@ def panel_quantiles(
 
 def _invert(coefficients: NDArray[np.float64], wanted: NDArray[np.float64]) -> NDArray[np.float64]:
     """Find x in [-1, 1] at which the antiderivative from -1 of a Legendre series reaches `wanted`."""
-    series = np.moveaxis(coefficients, -1, 0)
+    series = np.moveaxis(coefficients, -1, 0).reshape(NODES, -1)
     integral = legendre.legint(series, lbnd=-1, axis=0)
-    low, high = np.full(wanted.shape, -1.0), np.full(wanted.shape, 1.0)
-    x, settled = np.zeros(wanted.shape), np.zeros(wanted.shape, dtype=bool)
-    # Newton, kept inside a shrinking bracket: the antiderivative grows, the density may be near zero.
+    goal = wanted.reshape(-1)
+    low, high = np.full(goal.shape, -1.0), np.full(goal.shape, 1.0)
+    # From where the root would be if the density were even over the panel.
+    whole = legendre.legval(1.0, integral)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        x = np.nan_to_num(np.clip(2 * goal / whole - 1, -1, 1))
+    going = np.arange(len(goal))
+    # Newton, kept inside a shrinking bracket: the antiderivative grows, the density may be near zero. What has
+    # settled is left alone, so that no density's digits depend on its company.
     for _ in range(60):
-        excess = legendre.legval(x, integral, tensor=False) - wanted
-        low, high = np.where(excess < 0, x, low), np.where(excess < 0, high, x)
-        slope = legendre.legval(x, series, tensor=False)
+        now = x[going]
+        excess = legendre.legval(now, integral[:, going], tensor=False) - goal[going]
+        low[going] = np.where(excess < 0, now, low[going])
+        high[going] = np.where(excess < 0, high[going], now)
+        slope = legendre.legval(now, series[:, going], tensor=False)
         with np.errstate(divide="ignore", invalid="ignore"):
-            step = x - excess / slope
-        inside = (step > low) & (step < high)
-        following = np.where(inside, step, (low + high) / 2)
-        # What has settled stays, so that no density's digits depend on its company.
-        settled |= np.abs(following - x) <= 1e-15
-        if np.all(settled):
+            step = now - excess / slope
+        inside = (step >= low[going]) & (step <= high[going])
+        x[going] = np.where(inside, step, (low[going] + high[going]) / 2)
+        # Newton doubles the right digits: after a step this small the next would be lost in rounding.
+        going = going[np.abs(x[going] - now) > np.where(inside, _SMALL_STEP, 1e-15)]
+        if not len(going):
             break
-        x = np.where(settled, x, following)
-    return x
+    return np.asarray(x.reshape(wanted.shape))

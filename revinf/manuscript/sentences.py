@@ -86,7 +86,8 @@ def _goes_on(text: str, start: int, end: re.Match[str]) -> bool:
         # A question in brackets is a part of its sentence: "Fear (how else to explain it?) grew."
         return ")" in end.group() and text.rfind("(", start, end.start()) > start
     following = text[end.end() :].lstrip().lstrip("\"'“‘([")[:1]
-    word = re.search(r"[\w.]*$", text[start : end.start()])
+    # A few letters suffice: a longer word is no abbreviation, and a search from its every letter would take for ever.
+    word = re.search(r"[\w.]*$", text[max(start, end.start() - 20) : end.start()])
     last = word.group().lower() if word else ""
     if last in _SHORT or (len(last) == 1 and last.isalpha() and last not in "xyz"):
         return True

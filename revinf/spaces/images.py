@@ -3,7 +3,10 @@
 from __future__ import annotations
 
 import gzip
+import logging
 import warnings
+from collections.abc import Iterator
+from contextlib import contextmanager
 from pathlib import Path
 from typing import Any
 
@@ -58,7 +61,6 @@ def read_image(
         value that is not finite.
     """
     import nibabel as nib
-    from nibabel.imageglobals import LoggingOutputSuppressor
 
     if not file.name.lower().endswith((".nii", ".nii.gz")):
         raise InputFileError(f"the {what} must be a .nii or .nii.gz file; convert the image", path=file)
@@ -66,7 +68,7 @@ def read_image(
         raise InputFileError(f"there is no such file; give the path of the {what} image", path=file)
     try:
         # Headers with repairable faults make nibabel warn and log; the checks here replace that.
-        with warnings.catch_warnings(), LoggingOutputSuppressor():
+        with warnings.catch_warnings(), _silent("nibabel.global"):
             warnings.simplefilter("ignore")
             image = nib.load(file)
             if not isinstance(image, nib.Nifti1Image):
@@ -94,6 +96,17 @@ def read_image(
     if not np.isfinite(values).all():
         raise InputFileError("voxels must be finite, but some are NaN or infinite; set them to 0", path=file)
     return values.reshape(values.shape[:3]), affine
+
+
+@contextmanager
+def _silent(name: str) -> Iterator[None]:
+    """Keep a logger quiet; without its handlers alone, Python's handler of last resort would speak up."""
+    logger = logging.getLogger(name)
+    disabled, logger.disabled = logger.disabled, True
+    try:
+        yield
+    finally:
+        logger.disabled = disabled
 
 
 def _read_to_the_end(file: Path) -> None:

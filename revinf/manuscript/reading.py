@@ -31,6 +31,9 @@ FORMATS: dict[str, str] = {
 _LARGEST = 200_000_000
 """Bytes; a manuscript with all its pictures is smaller."""
 
+_MOST_TEXT = 5_000_000
+"""Letters: some 1,500 pages, which take a minute."""
+
 
 def read_document(path: str | Path, *, progress: Callable[[int, int], None] | None = None) -> Document:
     """Read a manuscript in the order of its text, with sections and without references.
@@ -77,6 +80,11 @@ def read_document(path: str | Path, *, progress: Callable[[int, int], None] | No
     if not any(character.isalpha() for block in blocks for character in block.text):
         remedy = "a scan needs text recognition first" if kind == ".pdf" else "is it the right file?"
         raise InputFileError(f"holds no text; {remedy}", path=path)
+    letters = sum(len(block.text) for block in blocks)
+    if letters > _MOST_TEXT:
+        raise InputFileError(
+            f"holds {letters:,} letters of text, which no manuscript has; is it the right file?", path=path
+        )
     return Document(name=path.name, blocks=tuple(in_sections(blocks)))
 
 

@@ -48,6 +48,10 @@ _SHORT = frozenset(
 _END = re.compile(r"[.!?]+[\"'”’)\]]*(?:\[\d[\d,\s–-]*\])?(?=\s+[\"'“‘(\[]*[^\W_])")
 
 
+_LONGEST = 5_000
+"""Letters; no sentence has as many."""
+
+
 def split_sentences(text: str) -> list[tuple[int, str]]:
     """Return the sentences of a paragraph.
 
@@ -77,7 +81,15 @@ def split_sentences(text: str) -> list[tuple[int, str]]:
     rest = text[start:]
     if rest.strip():
         sentences.append((start + len(rest) - len(rest.lstrip()), rest.strip()))
-    return sentences
+    return [piece for sentence in sentences for piece in _in_pieces(*sentence)]
+
+
+def _in_pieces(start: int, sentence: str) -> list[tuple[int, str]]:
+    """Cut what is far too long for a sentence, since the search for claims takes time with the square of its length."""
+    return [
+        (start + at, sentence[at : at + _LONGEST].strip() if len(sentence) > _LONGEST else sentence)
+        for at in range(0, len(sentence), _LONGEST)
+    ]
 
 
 def _goes_on(text: str, start: int, end: re.Match[str]) -> bool:

@@ -6,7 +6,7 @@ import numpy as np
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
-from scipy.stats import false_discovery_control, fisher_exact
+from scipy.stats import false_discovery_control, fisher_exact, norm
 from statsmodels.stats.multitest import multipletests
 
 from revinf.exceptions import InvalidProbabilityError
@@ -112,3 +112,12 @@ def test_a_p_value_outside_is_refused(value):
         match=f"^p-values must lie between 0 and 1, but got {value}; check the tests they come from$",
     ):
         benjamini_hochberg([0.5, value, 0.1])
+
+
+def test_fisher_p_at_a_billion_is_quick_finite_and_right() -> None:
+    assert fisher_p(Counts(10**9, 0, 0, 10**9)) == 0.0
+    assert fisher_p(Counts(1, 10**9, 0, 10**9)) == pytest.approx(1.0)
+    # Far from the bounds the law is normal (the central limit theorem): two-sided tail of z.
+    k, half = 500_050_000, 10**9
+    z = (k - half / 2) / np.sqrt(half / 8)
+    assert fisher_p(Counts(k, half - k, half - k, k)) == pytest.approx(2 * norm.sf(z), rel=2e-3)

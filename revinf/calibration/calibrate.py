@@ -18,6 +18,7 @@ from revinf.calibration.verdict import verdict
 from revinf.evidence.sources import LiteratureSource
 from revinf.evidence.vocabulary import Vocabulary, shipped_vocabulary
 from revinf.exceptions import InvalidClaimError
+from revinf.in_processes import each
 from revinf.literature.literature import Literature
 from revinf.stats.discount import discounted, fit_discount
 
@@ -150,9 +151,7 @@ def _predicted(
     if jobs == 1:
         done: Iterable[Predictions] = (predict_fold(*task) for task in tasks)
     else:
-        from joblib import Parallel, delayed
-
-        done = Parallel(n_jobs=jobs, return_as="generator")(delayed(predict_fold)(*task) for task in tasks)
+        done = each(predict_fold, tasks, jobs=jobs)
     for fold, predictions in enumerate(done):
         tell(fold + 1)
         yield predictions
@@ -172,8 +171,8 @@ def _without_each_fold(table: ForecastTable) -> list[float]:
     return found
 
 
-def _interval(exponent: float, each: list[float]) -> Discount:
+def _interval(exponent: float, of_each: list[float]) -> Discount:
     """Return the discount with its jackknife interval over the folds."""
-    k = len(each)
-    spread = float(np.sqrt((k - 1) / k * ((np.array(each) - np.mean(each)) ** 2).sum()))
+    k = len(of_each)
+    spread = float(np.sqrt((k - 1) / k * ((np.array(of_each) - np.mean(of_each)) ** 2).sum()))
     return Discount(exponent=exponent, low=max(0.0, exponent - 1.959964 * spread), high=exponent + 1.959964 * spread)

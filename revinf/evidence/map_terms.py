@@ -16,6 +16,7 @@ from revinf.evidence.map_term import MapQuestion, solved_ratios
 from revinf.evidence.parts import LiteratureFacts
 from revinf.evidence.sources import Source
 from revinf.evidence.vocabulary import shipped_vocabulary
+from revinf.in_processes import each
 from revinf.knowledge import VERSION
 from revinf.literature.literature import Literature
 from revinf.spaces.nifti import lattice_volume, series_chunks, volume_bytes
@@ -169,10 +170,6 @@ def _solved(asked: MapQuestion, found: TermHits, groups: list[NDArray[np.intp]])
     n_studies, settings = asked.literature.n_studies, asked.settings
     work = ((settings, n_studies, int(found.n_term[group[0]]), found.active, found.hits[group]) for group in groups)
     if found.hits.size < _MANY_TABLES:
-        yield from (solved_ratios(*each) for each in work)
-        return
-    from joblib import Parallel, delayed
-
-    yield from Parallel(n_jobs=-1, return_as="generator", pre_dispatch="n_jobs")(
-        delayed(solved_ratios)(*each) for each in work
-    )
+        yield from (solved_ratios(*arguments) for arguments in work)
+    else:
+        yield from each(solved_ratios, work, pre_dispatch="n_jobs")

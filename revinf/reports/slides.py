@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterator
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from revinf.in_processes import each
 from revinf.reports.cells import one_line
 from revinf.reports.comments import place_words
 from revinf.reports.drawn_text import fitted
@@ -68,14 +69,8 @@ def _images(audit: Audit, folder: Path) -> Iterator[Path]:
             _write_image(item, audit.source, path)
             yield path
         return
-    from joblib import Parallel, delayed
-
-    work = Parallel(n_jobs=-1, return_as="generator")
-    for _, path in zip(
-        work(delayed(_write_image)(item, audit.source, path) for item, path in named),
-        (path for _, path in named),
-        strict=True,
-    ):
+    written = each(_write_image, ((item, audit.source, path) for item, path in named))
+    for _, (_, path) in zip(written, named, strict=True):
         yield path
 
 

@@ -31,6 +31,13 @@ class Tally:
     slowest: float = 0.0
     failures: list[str] = field(default_factory=list)
 
+    def add(self, part: Tally) -> None:
+        """Add the inputs of a part."""
+        self.read += part.read
+        self.refused += part.refused
+        self.slowest = max(self.slowest, part.slowest)
+        self.failures += part.failures
+
 
 class TookTooLong(BaseException):
     """Not an Exception, so that no reader swallows it."""

@@ -99,8 +99,8 @@ def _manuscripts() -> list[Target]:
     """Return manuscripts of every kind."""
     demo = demo_folder()
     files = {
-        "m.md": (demo / "manuscript.md").read_bytes(),
-        "m.txt": (demo / "manuscript.md").read_bytes()[:3000],
+        "m.md": (demo / "manuscript.md").read_bytes()[-2500:],
+        "m.txt": (demo / "manuscript.md").read_bytes()[:2500],
         "m.tex": _LATEX,
         "m.html": _HTML,
         "m.docx": (demo / "manuscript.docx").read_bytes(),

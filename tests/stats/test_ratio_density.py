@@ -35,7 +35,9 @@ def independent_cdf(table, log_ratio):
     mode, spread = np.log(a / b), np.sqrt(1 / a + 1 / b)
     # The other rate reaches 1 at this place on the stretched axis, with a root's cusp: break there.
     kink = -abs(log_ratio) if (log_ratio > 0) == term_is_wider else -np.inf
-    broken = (np.log(np.exp(kink) / -np.expm1(kink)) - mode) / spread if kink > -np.inf else -np.inf
+    broken = np.inf if kink == 0 else -np.inf
+    if -np.inf < kink < 0:
+        broken = (np.log(np.exp(kink) / -np.expm1(kink)) - mode) / spread
     middle = float(np.clip(np.arcsinh(broken), -5.0, 5.0))
     nodes, weights = np.polynomial.legendre.leggauss(300)
     y = (nodes + 1) / 2

@@ -40,15 +40,16 @@ class Literature(Queries):
         self.own_fingerprint: str | None = None
 
     @classmethod
-    def open(cls, folder: str | Path, *, verify: bool = False) -> Literature:
+    def open(cls, folder: str | Path, *, verify: bool = True) -> Literature:
         """Open a literature folder.
 
         Parameters
         ----------
         folder : path
             A folder made by `revinf build`.
-        verify : bool, default False
-            Recompute the hash of every array first.
+        verify : bool, default True
+            Recompute the hash of every array; 10 MB take some 10 ms. Without it only types, shapes and offsets are
+            checked.
 
         Returns
         -------
@@ -61,9 +62,10 @@ class Literature(Queries):
             If the folder is missing, damaged, foreign or of another format version.
         """
         path = Path(folder)
+        manifest, arrays = open_arrays(path)
         if verify:
             verify_arrays(path)
-        return cls(path, *open_arrays(path))
+        return cls(path, manifest, arrays)
 
     def __repr__(self) -> str:
         return (

@@ -208,12 +208,13 @@ def test_damaged_literature_is_refused_by_every_command_that_opens_it(harm, dama
     assert not (tmp_path / "t.csv").exists()
 
 
-def test_flipped_byte_is_found_by_verify(damaged, revinf):
+def test_flipped_byte_is_found_by_every_command_that_counts(damaged, revinf):
     path = damaged / "peak_tenths.npy"
     raw = bytearray(path.read_bytes())
     raw[-1] ^= 1
     path.write_bytes(raw)
-    assert_one_line(revinf("inspect", damaged, "--verify"), "peak_tenths.npy: the content is not what was built")
+    for args in (("inspect", damaged, "--verify"), ("check", "--literature", damaged, *HERE)):
+        assert_one_line(revinf(*args), "peak_tenths.npy: the content is not what was built")
 
 
 @pytest.mark.parametrize(

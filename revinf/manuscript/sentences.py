@@ -101,6 +101,8 @@ def _goes_on(text: str, start: int, end: re.Match[str]) -> bool:
     # A few letters suffice: a longer word is no abbreviation, and a search from its every letter would take for ever.
     word = re.search(r"[\w.]*$", text[max(start, end.start() - 20) : end.start()])
     last = word.group().lower() if word else ""
+    if re.search(r"\d\s+(?:s|min|h|m|g|ml|mm|cm|ms|Hz|T)$", text[max(start, end.start() - 20) : end.start()]):
+        return following.islower()  # a unit behind a number ends its sentence
     if last in _SHORT or (len(last) == 1 and last.isalpha() and last not in "xyz"):
         return True
     return following.islower()

@@ -22,6 +22,10 @@ _LIKE_OTHERS = re.compile(
 _REFUSED = re.compile(r"claim|conclu|infer|argu|proof|prove", re.IGNORECASE)
 """Words of a refusal that holds for the whole clause it opens: "we make no claim that the peak ... indexes fear"."""
 
+_REFRAINED = re.compile(r"refrain|abstain|avoid|declin|hesita|reluctan|caution|claim|conclu|infer", re.IGNORECASE)
+
+_IDIOM = re.compile(r"\b(?:can|could)(?:not|\s+not|n't)\s+(?:help|but)\b|\bno (?:doubt|wonder)\b", re.IGNORECASE)
+
 _AUTHOR = re.compile(r"\W*[A-Z][\w'’-]+(?:\s+(?:and|&)\s+[A-Z][\w'’-]+|\s+et al\.?,?)?\s*[(\[](?:19|20)\d\d[a-z]?[)\]]")
 """An author with a year as the subject of the sentence."""
 
@@ -38,6 +42,10 @@ def is_declined(sentence: Reading, cue: CueMention) -> bool:
         return True
     for other in sentence.cues:
         if other.direction == "open" and other.start <= cue.end:
+            return True
+        if _IDIOM.search(sentence.text[max(0, other.start - 8) : other.end + 6]):
+            continue  # "could not help seeing" is no denial
+        if cue.direction == "therefore" and other.direction == "negation" and _REFRAINED.search(other.words):
             return True
         reach = 150 if _REFUSED.search(other.words) else 45
         if other.direction == "negation" and other.start <= cue.end and cue.start - other.end < reach:

@@ -30,6 +30,10 @@ __all__ = ["read_statement"]
 _IT = re.compile(r"(?:\s+(?:it|this|so|that))?\s*(?:[.,;]|$)")
 """The object of "Fear was not rated, but the response implies it", or none: "and the response is the proof"."""
 
+_VERB_BEFORE = re.compile(
+    r"\b(?:may|might|could|can|would|to|should|must|and|will|they|both|\w+s)\s+(?:\w+ly\s+)?$", re.IGNORECASE
+)
+
 _LEAD = 12  # letters before a cue that opens its sentence: "Highly", "Also,"
 
 
@@ -99,6 +103,8 @@ def _other_kind(sentence: Reading) -> StatementKind:
 
 def _steps(sentence: Reading, before: Reading | None, cue: CueMention) -> list[Inference]:
     """Return the steps that a cue makes, whatever else the sentence says of them."""
+    if cue.words.lower() == "signal" and not _VERB_BEFORE.search(sentence.text[: cue.start]):
+        return []  # "the FFA signal rose": the noun
     if cue.direction in ("reverse", "therefore", "conclude"):
         fronted = _fronted(sentence, cue)
         if fronted:
@@ -150,9 +156,14 @@ def _backwards(
     return places, from_before, task_free(sentence, processes)
 
 
+def _masked(text: str) -> str:
+    """Return a text of the same length in which brackets hold no commas."""
+    return re.sub(r"\([^)]*\)|\[[^\]]*\]", lambda found: "_" * len(found.group()), text)
+
+
 def _comma_of_fronted(sentence: Reading, cue: CueMention) -> int | None:
     """Return where the main clause begins after a cue that opens its sentence: "As shown by the place, ..."."""
-    comma = re.search(r",\s", re.sub(r"\([^)]*\)", lambda found: "_" * len(found.group()), sentence.text)[cue.end :])
+    comma = re.search(r",\s", _masked(sentence.text)[cue.end :])
     return cue.end + comma.end() if cue.start < _LEAD and comma is not None else None
 
 
@@ -211,7 +222,7 @@ def _is_assertion(sentence: Reading, cue: CueMention) -> bool:
 
 def _because(sentence: Reading, cue: CueMention) -> list[Inference]:
     """Return the steps from a reason in which a place is active to what stands outside the reason."""
-    comma = re.search(r",\s", sentence.text[cue.end :])
+    comma = re.search(r",\s", _masked(sentence.text)[cue.end :])
     at_start = cue.start < 15
     if at_start and not comma:
         return []

@@ -64,7 +64,7 @@ _PLACE_BEFORE = re.compile(rf"(?:{_BRAIN.pattern})\w*(?:\s*[:,]|[^()\[\]]{{0,20}
 _NUMBERED = re.compile(r"\b(?:BAs?|Brodmann areas?|areas?|lobules?|weights?|(?:[nNk]|kE)\s*=)\s*:?\s*$", re.IGNORECASE)
 """Right before a number that cannot be an x, whatever signs follow."""
 
-_SIDE = re.compile(r"\b[LR]\s*:\s*$")
+_SIDE = re.compile(r"(?:\b[LR]\s*:|[(\[;,]\s*[LR])\s*$")
 _COMPANY = 60
 """Letters between a triple that is sure and a plain one of the same look that it vouches for."""
 
@@ -205,6 +205,8 @@ def _is_signed(match: re.Match[str]) -> bool:
 def _could_be(text: str, match: re.Match[str]) -> bool:
     """Tell whether nothing around three numbers says that they are statistics, sizes, counts, dates or citations."""
     before, after = text[max(0, match.start() - 60) : match.start()], text[match.end() : match.end() + 40]
+    if re.search(r"\b(?:at|slices?|sections?|planes?|cuts?|levels?)\s+(?:at\s+)?[xyz]\s*=\s*$", before):
+        return False  # where a picture is cut
     if _COUNTED.match(after) or _NUMBERED.search(before) or (_STATISTIC.search(before) and not _SIDE.search(before)):
         return False
     if match.re is _RUN and not _alike(match["s"], match["t"]):

@@ -243,7 +243,8 @@ _PEOPLE = re.compile(
 )
 _ADVERB = re.compile(r"\W*(?:\w+ly|thus|hence|therefore|perhaps|so|then|in short|in sum),?\s", re.IGNORECASE)
 _BE = re.compile(
-    r"\W*(?P<what>(?:[\w'’-]+\s+){1,3}?(?:was|were|had|seemed|appeared|felt|became|(?:must|may|might|will) have)"
+    r"\W*(?P<what>(?:[\w'’-]+\s+){1,3}?(?:was|were|is|are|can|could|had|seemed|appeared|felt|became|"
+    r"(?:must|may|might|will) have)"
     r"(?:\s+[\w'’-]+){1,4})",
     re.IGNORECASE,
 )

@@ -22,7 +22,7 @@ from revinf.manuscript.processes import shipped_processes
 from revinf.manuscript.scanning import scan
 
 SET = Path(__file__).with_name("evaluation_set.json")
-PARTS = ("tuning", "held apart", "second tuning", "second held apart")
+PARTS = ("tuning", "held apart", "second tuning", "second held apart", "third tuning", "third held apart")
 
 
 @dataclass

@@ -17,6 +17,9 @@ from revinf.manuscript.statement_patterns import ACTIVITY, ANAPHOR, DURING, TASK
 
 __all__ = ["side_by_side"]
 
+_NAME = "side by side"
+"""What the table of claims shows in place of a cue's words."""
+
 _EXPLAINED = frozenset(["premise", "report", "open", "negation"])
 _METHOD = re.compile(
     r"\b(?:correlat\w+|predict\w*|ratings?|rated|scores?|volumes?|thick\w*|masks?|ROIs?|regions? of interest|seeds?|"
@@ -60,7 +63,7 @@ def side_by_side(sentence: Reading, before: Reading | None = None) -> list[Infer
     Returns
     -------
     list of Inference
-        Hedged or not as the sentence is; the cue is the whole stretch between the two.
+        Hedged or not as the sentence is; the cue is called side by side and spans what lies between the two.
 
     Examples
     --------
@@ -92,8 +95,8 @@ def side_by_side(sentence: Reading, before: Reading | None = None) -> list[Infer
             place = min(places, key=lambda one: max(one.start - process.end, process.start - one.end))
             start, end = sorted([process.end, place.end, process.start, place.start])[1:3]
             chosen = (place,)
-        words = " ".join(sentence.text[start:end].split()) or ","
-        cue = CueMention(cue="side by side", words=words, direction="reverse", strength="plain", start=start, end=end)
+        start += len(sentence.text[start:end]) - len(sentence.text[start:end].lstrip())
+        cue = CueMention(cue=_NAME, words=_NAME, direction="reverse", strength="plain", start=start, end=end)
         steps.append(Inference(process=process, places=chosen, from_before=from_before, cue=cue, hedged=hedged))
     return steps
 

@@ -171,7 +171,7 @@ def _linked_to(sentence: Reading, places: Sequence[PlaceMention], cue: CueMentio
     """Return where the process of "we relate the activity of the place to the process" begins."""
     if cue.direction != "conclude" or not places or places[-1].start < cue.end:
         return None
-    found = re.compile(r"(?:\([^)]*\)|\[[^\]]*\]|[^,;:]){0,60}?\b(?:to|with|as)\b").match(sentence.text, places[-1].end)
+    found = re.compile(r"[^,;:]{0,80}?\b(?:to|with|as)\b").match(_masked(sentence.text), places[-1].end)
     return found.end() if found else None
 
 

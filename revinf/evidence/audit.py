@@ -21,12 +21,16 @@ from revinf.evidence.settle import RIVALS, settle
 from revinf.evidence.settlement import Settlement
 from revinf.evidence.sources import LiteratureSource, Source, as_source
 from revinf.exceptions import InvalidClaimError, RevinfError, UnknownTermError
+from revinf.in_processes import each
 from revinf.literature.literature import Literature
 
 if TYPE_CHECKING:
     import pandas as pd
 
 __all__ = ["GATES", "READERS", "Audit", "AuditedClaim", "audit", "audit_of", "checked_readers", "fails_gate"]
+
+_MANY = 40
+"""From so many claims on, other processes help."""
 
 GATES = ("bare", "positive", "strong", "very strong")
 READERS = ("author", "reviewer", "presenter")
@@ -131,9 +135,12 @@ def audit(
     asked = as_source(source)
     table = claims if isinstance(claims, ClaimsTable) else None
     listed = list(claims.claims) if isinstance(claims, ClaimsTable) else list(claims)
+    calls = [(claim, asked, choices) for claim in listed]
+    # Other processes take a second or two to start.
+    results = each(_audited, calls) if len(listed) >= _MANY else (_audited(*call) for call in calls)
     audited = []
-    for done, claim in enumerate(listed, start=1):
-        audited.append(_audited(claim, asked, choices))
+    for done, item in enumerate(results, start=1):
+        audited.append(item)
         if progress is not None:
             progress(done, len(listed))
     if not any(item.assessment for item in audited):

@@ -100,3 +100,15 @@ def test_audit_of_one_answer_holds_that_answer(source: Source) -> None:
     (item,) = audit_of(FOR, answer).audited
     assert item.assessment is answer
     assert item.advice == advise(answer)
+
+
+def test_many_claims_in_other_processes_have_the_answers_of_one(
+    source: Source, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    claims = [FOR, UNDECIDED, UNKNOWN, AGAINST, FAR]
+    plain = audit(claims, source)
+    told: list[tuple[int, int]] = []
+    monkeypatch.setattr("revinf.evidence.audit._MANY", 2)
+    beside = audit(claims, source, progress=lambda done, total: told.append((done, total)))
+    assert told == [(number, 5) for number in range(1, 6)]
+    assert beside.audited == plain.audited

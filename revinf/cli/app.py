@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import signal
 import sys
 from typing import Annotated
 
@@ -76,4 +77,8 @@ def run() -> None:
         # A terminal that cannot show a character must not end the program.
         if hasattr(stream, "reconfigure"):
             stream.reconfigure(errors="replace")
-    app()
+    try:
+        app()
+    finally:
+        # The work is done: Ctrl-C while Python closes down would only print a traceback.
+        signal.signal(signal.SIGINT, signal.SIG_IGN)

@@ -156,7 +156,7 @@ def _open_array(path: Path, entry: ArrayEntry) -> NDArray[Any]:
         if path.is_symlink():
             raise ValueError("a symbolic link")
         with warnings.catch_warnings():
-            warnings.simplefilter("error")  # numpy only warns of a header that needs repair
+            warnings.simplefilter("error", UserWarning)  # numpy only warns of a header that needs repair
             array = np.lib.format.open_memmap(path, mode="r")  # knows neither pickles nor archives
     except FileNotFoundError:
         raise LiteratureError("this array is missing; build the literature again", path=path) from None

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import shlex
 import shutil
+import signal
 from pathlib import Path
 
 import nibabel as nib
@@ -259,3 +260,15 @@ def test_lack_of_memory_is_told_in_one_line(revinf, monkeypatch):
 
     monkeypatch.setattr("revinf.evidence.source_choice.choose_source", exhaust)
     assert_one_line(revinf("terms"), "there is not enough memory for this")
+
+
+def test_an_interrupt_that_compiled_code_turns_into_another_error_is_still_one(revinf, monkeypatch):
+    def interrupt(*_args, **_options):
+        try:
+            signal.raise_signal(signal.SIGINT)
+        except KeyboardInterrupt:
+            raise ValueError("Invalid bounding box") from None
+
+    monkeypatch.setattr("revinf.evidence.source_choice.choose_source", interrupt)
+    assert_one_line(revinf("terms"), "interrupted; nothing was left half-written", code=130)
+    assert signal.getsignal(signal.SIGINT) is signal.default_int_handler

@@ -127,7 +127,7 @@ def test_calibration_is_the_same_bytes_whatever_the_number_of_processes(literatu
 
 
 @pytest.mark.parametrize("name", ["build", "audit", "calibrate", "map", "map of all"])
-@pytest.mark.parametrize("after", [0.3, 0.9, 1.4])
+@pytest.mark.parametrize("after", [0.4, 1.1, 1.6])
 def test_an_interrupt_is_one_line_and_leaves_nothing(name: str, after: float, literature: Path, tmp_path: Path) -> None:
     child = subprocess.Popen(
         [sys.executable, "-m", "revinf", *map(str, commands(literature, tmp_path)[name])],
@@ -143,7 +143,7 @@ def test_an_interrupt_is_one_line_and_leaves_nothing(name: str, after: float, li
     if child.returncode == 0:
         return  # it was quicker
     if child.returncode == -signal.SIGINT:
-        assert after < 0.5  # Python itself was still starting
+        assert after < 1  # Python itself was still starting
         return
     assert child.returncode == 130, stderr
     assert stderr == "revinf: interrupted; nothing was left half-written\n"

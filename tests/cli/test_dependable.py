@@ -143,7 +143,7 @@ def test_an_interrupt_is_one_line_and_leaves_nothing(name: str, after: float, li
     if child.returncode == 0:
         return  # it was quicker
     if child.returncode == -signal.SIGINT:
-        assert after < 1  # Python itself was still starting
+        assert "one_line.py" not in stderr  # Python itself was still starting, or closing down
         return
     assert child.returncode == 130, stderr
     assert stderr == "revinf: interrupted; nothing was left half-written\n"

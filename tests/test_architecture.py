@@ -16,13 +16,14 @@ PACKAGE = ROOT / "revinf"
 
 INSIDE = {
     "exceptions": set(),
+    "whole_file": {"exceptions"},
     "whole_folder": {"exceptions"},
     "in_processes": set(),
     "knowledge": {"exceptions"},
     "stats": {"exceptions"},
     "spaces": {"exceptions", "knowledge"},
-    "literature": {"exceptions", "whole_folder", "knowledge", "spaces"},
-    "base_rates": {"exceptions", "stats", "spaces", "literature"},
+    "literature": {"exceptions", "whole_file", "whole_folder", "knowledge", "spaces"},
+    "base_rates": {"exceptions", "whole_file", "stats", "spaces", "literature"},
     "evidence": {"exceptions", "in_processes", "knowledge", "stats", "spaces", "literature", "base_rates"},
     "calibration": {
         "exceptions",
@@ -35,7 +36,16 @@ INSIDE = {
         "evidence",
     },
     "manuscript": {"exceptions", "knowledge"},
-    "reports": {"exceptions", "whole_folder", "in_processes", "knowledge", "evidence", "calibration", "manuscript"},
+    "reports": {
+        "exceptions",
+        "whole_file",
+        "whole_folder",
+        "in_processes",
+        "knowledge",
+        "evidence",
+        "calibration",
+        "manuscript",
+    },
     "cli": {"exceptions", "knowledge", "literature", "base_rates", "evidence", "calibration", "manuscript", "reports"},
     "__init__": {
         "exceptions",
@@ -51,6 +61,7 @@ INSIDE = {
 }
 OUTSIDE = {
     "exceptions": set(),
+    "whole_file": set(),
     "whole_folder": set(),
     "in_processes": {"joblib"},
     "knowledge": set(),

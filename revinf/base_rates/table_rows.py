@@ -20,6 +20,7 @@ from revinf.base_rates.table_checks import TableChecks
 from revinf.base_rates.table_row import TableRow
 from revinf.exceptions import InputFileError
 from revinf.literature.spelling import normalise_term
+from revinf.whole_file import replacing_file
 
 __all__ = ["COLUMNS", "COUNT_COLUMNS", "TableRow", "read_rows", "write_table"]
 
@@ -96,14 +97,8 @@ def write_table(rows: Iterable[TableRow], path: str | Path) -> int:
     # No clock in the gzip header: the same counts give the same bytes.
     content = gzip.compress(raw, compresslevel=9, mtime=0) if path.suffix == ".gz" else raw
     beside = path.with_name(f".{path.name}.part-{os.getpid()}")
-    try:
+    with replacing_file(path, beside, "choose another place with --out"):
         beside.write_bytes(content)
-        beside.replace(path)
-    except OSError as error:
-        beside.unlink(missing_ok=True)
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place with --out", path=path
-        ) from None
     return n_rows
 
 

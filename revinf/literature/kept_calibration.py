@@ -12,7 +12,7 @@ import os
 from pathlib import Path
 from typing import Any
 
-from revinf.exceptions import InputFileError
+from revinf.whole_file import replacing_file
 
 __all__ = ["FILE", "keep_calibration", "kept_discount"]
 
@@ -42,16 +42,9 @@ def keep_calibration(folder: Path, content: dict[str, Any]) -> Path:
     """
     target = folder / FILE
     beside = folder.parent / f".{folder.name}.calibration-{os.getpid()}"
-    try:
+    with replacing_file(target, beside, "use a literature folder of your own"):
         text = json.dumps(content, indent=1, ensure_ascii=False, allow_nan=False) + "\n"
         beside.write_text(text, encoding="utf-8")
-        beside.replace(target)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); use a literature folder of your own", path=target
-        ) from None
-    finally:
-        beside.unlink(missing_ok=True)
     return target
 
 

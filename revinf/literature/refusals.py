@@ -11,6 +11,7 @@ from pathlib import Path
 from typing import Any
 
 from revinf.exceptions import InputFileError
+from revinf.whole_file import replacing_file
 
 __all__ = ["ImportReport", "Notice"]
 
@@ -103,17 +104,13 @@ class ImportReport:
             return False
         self.check_target(path)
         beside = path.with_name(f".{path.name}.part-{os.getpid()}")
-        try:
-            with beside.open("w", encoding="utf-8", newline="") as stream:
-                writer = csv.writer(stream, lineterminator="\n")
-                writer.writerow(_HEADER)
-                writer.writerows(self.refused)
-            beside.replace(path)
-        except OSError as error:
-            beside.unlink(missing_ok=True)
-            raise InputFileError(
-                f"cannot be written ({error.strerror or error}); choose another place with --out", path=path
-            ) from None
+        with (
+            replacing_file(path, beside, "choose another place with --out"),
+            beside.open("w", encoding="utf-8", newline="") as stream,
+        ):
+            writer = csv.writer(stream, lineterminator="\n")
+            writer.writerow(_HEADER)
+            writer.writerows(self.refused)
         return True
 
     def check_target(self, path: Path) -> None:

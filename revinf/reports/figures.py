@@ -11,6 +11,7 @@ from pathlib import Path
 from typing import Any
 
 from revinf.exceptions import InputFileError
+from revinf.whole_file import replacing_file
 
 __all__ = ["ACCENT", "INK", "MUTED", "new_figure", "ratio_axis", "write_figure"]
 
@@ -95,14 +96,9 @@ def write_figure(figure: Any, path: str | Path, *, title: str) -> Path:
     metadata: dict[str, Any] = {"Title": title}
     metadata |= {".svg": {"Date": None}, ".pdf": {"CreationDate": None}}.get(kind, {"Software": None})
     beside = path.with_name(f".{path.stem}.part-{os.getpid()}{kind}")
-    try:
-        with matplotlib.rc_context({"svg.hashsalt": "revinf", "svg.fonttype": "none"}):
-            figure.savefig(beside, metadata=metadata)
-        beside.replace(path)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place", path=path
-        ) from None
-    finally:  # also where somebody interrupts
-        beside.unlink(missing_ok=True)
+    with (
+        replacing_file(path, beside, "choose another place"),
+        matplotlib.rc_context({"svg.hashsalt": "revinf", "svg.fonttype": "none"}),
+    ):
+        figure.savefig(beside, metadata=metadata)
     return path

@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING, Any
 
 from revinf.exceptions import InputFileError
 from revinf.reports.html_view import report_view
+from revinf.whole_file import replacing_file
 
 if TYPE_CHECKING:
     from revinf.evidence.audit import Audit
@@ -85,15 +86,8 @@ def write_html(audit: Audit, path: str | Path, *, command: str = "", title: str 
         raise InputFileError(f"a report ends in .html, but got {path.suffix!r}; rename it", path=path)
     text = html_text(audit, command=command, title=title)
     beside = path.with_name(f".{path.stem}.part-{os.getpid()}.html")
-    try:
+    with replacing_file(path, beside, "choose another place"):
         beside.write_text(text, encoding="utf-8", newline="\n")
-        beside.replace(path)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place", path=path
-        ) from None
-    finally:  # also where somebody interrupts
-        beside.unlink(missing_ok=True)
     return path
 
 

@@ -9,8 +9,8 @@ from collections.abc import Iterable
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from revinf.exceptions import InputFileError
 from revinf.reports.cells import csv_cell, one_line
+from revinf.whole_file import replacing_file
 
 if TYPE_CHECKING:
     from revinf.manuscript.found import Scan
@@ -142,14 +142,7 @@ def write_table(text: str, path: str | Path) -> Path:
     """
     path = Path(path)
     beside = path.with_name(f".{path.name}.part-{os.getpid()}")
-    try:
+    with replacing_file(path, beside, "choose another place"):
         path.parent.mkdir(parents=True, exist_ok=True)
         beside.write_text(text, encoding="utf-8", newline="\n")
-        beside.replace(path)
-    except OSError as error:
-        raise InputFileError(
-            f"cannot be written ({error.strerror or error}); choose another place", path=path
-        ) from None
-    finally:  # also where somebody interrupts
-        beside.unlink(missing_ok=True)
     return path

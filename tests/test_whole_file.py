@@ -29,7 +29,7 @@ def test_what_stops_the_writing_leaves_the_old_file_and_no_litter(stop: type[Bas
 def test_a_place_that_cannot_be_written_is_one_line_with_the_remedy(tmp_path: Path) -> None:
     target = tmp_path / "absent" / "file"
     with (
-        pytest.raises(InputFileError, match="cannot be written .*; choose another place"),
+        pytest.raises(InputFileError, match=r"cannot be written .*; choose another place"),
         replacing_file(target, target.with_name(".beside"), "choose another place") as beside,
     ):
         beside.write_text("never")
